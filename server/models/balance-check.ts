@@ -1,0 +1,35 @@
+import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes, type Sequelize } from 'sequelize'
+import { BALANCE_CHECK_KINDS, type BalanceCheckKind } from '#shared/vocabulary.ts'
+import { newId } from './new-id.ts'
+
+/** One external check of a balance against a weight. */
+export class BalanceCheck extends Model<InferAttributes<BalanceCheck>, InferCreationAttributes<BalanceCheck>> {
+  declare id: CreationOptional<string>
+  declare balanceId: string
+  declare kind: BalanceCheckKind
+  declare checkedAt: Date
+  declare checkedById: string
+  declare nominalMg: number
+  declare readingMg: number
+  declare toleranceMg: number
+  declare hasPassed: boolean
+  declare remarks: CreationOptional<string>
+}
+
+export function defineBalanceCheck(sequelize: Sequelize): void {
+  BalanceCheck.init(
+    {
+      id: { type: DataTypes.UUID, primaryKey: true, defaultValue: newId },
+      balanceId: { type: DataTypes.UUID, allowNull: false },
+      kind: { type: DataTypes.ENUM(...BALANCE_CHECK_KINDS), allowNull: false },
+      checkedAt: { type: DataTypes.DATE(3), allowNull: false },
+      checkedById: { type: DataTypes.UUID, allowNull: false },
+      nominalMg: { type: DataTypes.DECIMAL(12, 4), allowNull: false },
+      readingMg: { type: DataTypes.DECIMAL(12, 4), allowNull: false },
+      toleranceMg: { type: DataTypes.DECIMAL(12, 4), allowNull: false },
+      hasPassed: { type: DataTypes.BOOLEAN, allowNull: false },
+      remarks: { type: DataTypes.STRING, allowNull: false, defaultValue: '' },
+    },
+    { sequelize, tableName: 'balance_checks', underscored: true, timestamps: false },
+  )
+}

@@ -1,0 +1,13 @@
+import packageJson from '../../package.json' with { type: 'json' }
+import type { Config } from '../config.ts'
+import type { Endpoint } from '../http/endpoint.ts'
+import { aboutEndpoints } from './about.ts'
+import { apiDescriptionEndpoints } from './api-description.ts'
+import { authEndpoints } from './auth.ts'
+import { healthEndpoints } from './health.ts'
+
+/** Every endpoint of the API: the router, the API description and the role table of the tests all read this list. */
+export function allEndpoints(config: Config): Endpoint[] {
+  const endpoints = [...healthEndpoints, ...aboutEndpoints(config), ...authEndpoints(config)]
+  return [...endpoints, ...apiDescriptionEndpoints(endpoints, packageJson.version)]
+}

@@ -1,0 +1,51 @@
+/**
+ * Long pass-phrases that many people choose: keyboard walks, counting, song and proverb openings, and the best known
+ * example phrases. From memory; a site can only make the rule stricter by its own list of breached ones.
+ */
+const PHRASES = [
+  '123456789012345',
+  '1234567890123456',
+  '12345678901234567890',
+  '098765432109876',
+  'abcdefghijklmno',
+  'abcdefghijklmnop',
+  'abcdefghijklmnopqrstuvwxyz',
+  'qwertyuiopasdfg',
+  'qwertyuiopasdfghjkl',
+  'qwertyuiopasdfghjklzxcvbnm',
+  '1qaz2wsx3edc4rfv',
+  '1q2w3e4r5t6y7u8i',
+  'q1w2e3r4t5y6u7i8o9p0',
+  'passwordpassword',
+  'passwordpassword1',
+  'password12345678',
+  'password123456789',
+  'iloveyouiloveyou',
+  'iloveyouforever',
+  'iloveyousomuch',
+  'correcthorsebatterystaple',
+  'letmeinletmein12',
+  'letmeinletmeinletmein',
+  'adminadminadmin',
+  'administrator123',
+  'welcomewelcome123',
+  'changemechangeme',
+  'changemeplease123',
+  'thequickbrownfox',
+  'thequickbrownfoxjumpsoverthelazydog',
+  'tobeornottobethatisthequestion',
+  'maytheforcebewithyou',
+  'onceuponatimethere',
+  'happybirthdaytoyou',
+  'twinkletwinklelittlestar',
+  'superduperpassword',
+  'mysecretpassword',
+  'mysecretpassphrase',
+  'thisismypassword',
+  'thisismypassphrase',
+  'thisisapassphrase',
+  'supersecretpassword',
+]
+
+/** Lower case, without spaces. */
+export const COMMON_PASS_PHRASES: ReadonlySet<string> = new Set(PHRASES)
