@@ -23,7 +23,7 @@ export const MAX_WEIGHT_MG = 5000
 /** Weights are kept to 0.001 mg; a reading with more would be rounded in silence, so it is refused. */
 const MAX_DECIMALS_MG = 3
 
-const SHAPE = /^(?:(\p{L}{1,8})[\s:]+)?([+\-−]?)\s*(\d{1,12}(?:([.,])(\d{1,12}))?)\s*([\p{L}µ/%]{1,8})?$/u
+const SHAPE = /^(?:(\p{L}{1,8})\s+)?([+\-−]?)\s*(\d{1,12}(?:([.,])(\d{1,12}))?)\s*([\p{L}µ/%]{1,8})?$/u
 const OTHER_NUMBER = /^[+-]?[\d.,]*\d(?:e[+-]?\d+)?$/i
 const TROUBLE = /over|under|err|unstab|dynam|motion|invalid|fail|^(?:ol|ul|h|l|e\d+|nan|inf\w*)$|^[-_^~=\s]+$|[?*~]/i
 const MARKS: Readonly<Record<string, WeightMark>> = { n: 'net', net: 'net', g: 'gross', b: 'gross', gross: 'gross' }

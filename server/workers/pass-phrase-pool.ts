@@ -32,16 +32,18 @@ class PassPhrasePool {
     const id = ++this.#lastId
     return new Promise((resolve, reject) => {
       this.#waiting.set(id, { resolve, reject })
+      worker.ref()
       worker.postMessage({ id, task })
     })
   }
 
   #start(): Worker {
-    const worker = new Worker(new URL('./pass-phrase-worker.ts', import.meta.url), { execArgv: ['--import', 'tsx'] })
+    const worker = new Worker(new URL('./pass-phrase-worker.mjs', import.meta.url), { execArgv: [] })
     worker.unref()
     worker.on('message', ({ id, result }: { id: number; result: unknown }) => {
       this.#waiting.get(id)?.resolve(result)
       this.#waiting.delete(id)
+      if (this.#waiting.size === 0) worker.unref()
     })
     worker.on('error', (error) => {
       for (const { reject } of this.#waiting.values()) reject(error)

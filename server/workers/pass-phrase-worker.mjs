@@ -1,8 +1,8 @@
+// JavaScript, since a thread does not inherit the loader that lets the main thread read TypeScript.
 import { parentPort } from 'node:worker_threads'
 import { compareSync, hashSync } from 'bcryptjs'
-import type { PassPhraseTask } from './pass-phrase-pool.ts'
 
-parentPort?.on('message', ({ id, task }: { id: number; task: PassPhraseTask }) => {
+parentPort.on('message', ({ id, task }) => {
   const result = task.kind === 'hash' ? hashSync(task.text, task.cost) : compareSync(task.text, task.hash)
-  parentPort?.postMessage({ id, result })
+  parentPort.postMessage({ id, result })
 })
