@@ -83,7 +83,9 @@ interface MappingParts {
 }
 
 function checkMapping(mapping: MappingParts, context: z.RefinementCtx): void {
-  const refuse = (path: (string | number)[], message: string): void => void context.addIssue({ code: 'custom', path, message })
+  const refuse = (path: (string | number)[], message: string): void => {
+    context.addIssue({ code: 'custom', path, message })
+  }
   const { columns, headerRow, split } = mapping
   if (mapping.delimiter === mapping.decimal) refuse(['decimal'], 'The decimal sign cannot be the delimiter too.')
   if (headerRow !== null && mapping.firstDataRow !== undefined && mapping.firstDataRow <= headerRow) {
@@ -122,7 +124,7 @@ export const BALANCE_FILE_PROBLEM_CODES = [
     'bad-time',
     'future-time',
   ],
-  ...['backward-time', 'no-sample', 'split-sample', 'large-sample', 'too-many-rows', 'read-failed'],
+  ...['backward-time', 'no-sample', 'split-sample', 'large-sample', 'too-many-rows'],
 ] as const
 export type BalanceFileProblemCode = (typeof BALANCE_FILE_PROBLEM_CODES)[number]
 
