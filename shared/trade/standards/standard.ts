@@ -1,4 +1,4 @@
-import type { WeighingBasis } from '../../vocabulary.ts'
+import type { WeighingBasis } from '#shared/vocabulary.ts'
 
 /** Whether the figures rest on weights that the standard asks for; `indicative` supports no compendial claim. */
 export type AcceptanceBasis = 'compendial' | 'indicative'

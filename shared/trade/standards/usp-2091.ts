@@ -1,6 +1,6 @@
 import { requirePositive, requireValues, StatisticsError } from '#shared/statistics/errors.ts'
 import { momentsOf } from '#shared/statistics/summary.ts'
-import type { WeighingBasis } from '../../vocabulary.ts'
+import type { WeighingBasis } from '#shared/vocabulary.ts'
 import {
   judgeBasis,
   limitsAround,
