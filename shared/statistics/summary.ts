@@ -63,7 +63,7 @@ export function rsdPercentOf(mean: number, sd: number): number | null {
 export function momentsOf(values: ArrayLike<number>): Moments {
   requireValues('values', values, { min: 1 })
   const n = values.length
-  const mean = compensatedMean(values)
+  const near = compensatedMean(values)
   let min = values[0]!
   let max = min
   let sum = 0
@@ -73,7 +73,7 @@ export function momentsOf(values: ArrayLike<number>): Moments {
     const value = values[place]!
     if (value < min) min = value
     else if (value > max) max = value
-    const distance = value - mean
+    const distance = value - near
     drift += distance
     const square = distance * distance
     const next = sum + square
@@ -81,10 +81,10 @@ export function momentsOf(values: ArrayLike<number>): Moments {
     lost += sum >= square ? sum - next + square : square - next + sum
     sum = next
   }
-  // `drift` would be zero for an exact mean; its square takes out what the rounding of the mean put in.
-  const sumOfSquares = Math.max(0, sum + lost - (drift * drift) / n)
+  // `drift` would be zero if `near` were the exact mean: it mends the mean, and its square takes out what the rounding put in.
+  const sumOfSquares = min === max ? 0 : Math.max(0, sum + lost - (drift * drift) / n)
   requireRepresentable(sumOfSquares, max - min)
-  return { n, mean, sumOfSquares, min, max }
+  return { n, mean: near + drift / n, sumOfSquares, min, max }
 }
 
 /**
