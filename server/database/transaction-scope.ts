@@ -26,3 +26,11 @@ export function currentTransaction(): Transaction | undefined {
   const transaction = namespace.get('transaction')
   return transaction instanceof Transaction ? transaction : undefined
 }
+
+/**
+ * Runs work that must stay even when the surrounding transaction is rolled back: counting a failed pass-phrase, for
+ * one. It must not touch rows that the transaction has locked.
+ */
+export function outsideTransaction<T>(work: () => Promise<T>): Promise<T> {
+  return storage.run(new Map(), work)
+}

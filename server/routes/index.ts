@@ -4,10 +4,11 @@ import type { Endpoint } from '../http/endpoint.ts'
 import { aboutEndpoints } from './about.ts'
 import { apiDescriptionEndpoints } from './api-description.ts'
 import { authEndpoints } from './auth.ts'
+import { batchEndpoints } from './batches.ts'
 import { healthEndpoints } from './health.ts'
 
 /** Every endpoint of the API: the router, the API description and the role table of the tests all read this list. */
 export function allEndpoints(config: Config): Endpoint[] {
-  const endpoints = [...healthEndpoints, ...aboutEndpoints(config), ...authEndpoints(config)]
+  const endpoints = [...healthEndpoints, ...aboutEndpoints(config), ...authEndpoints(config), ...batchEndpoints]
   return [...endpoints, ...apiDescriptionEndpoints(endpoints, packageJson.version)]
 }

@@ -1,5 +1,6 @@
 import type { ChangePassPhrase } from '#shared/schemas/auth.ts'
 import { inTransaction } from '../../database/in-transaction.ts'
+import { outsideTransaction } from '../../database/transaction-scope.ts'
 import { InvalidFieldError, SignedOutError } from '../../errors.ts'
 import type { Actor } from '../../http/actor.ts'
 import type { Client } from '../../http/client.ts'
@@ -33,7 +34,12 @@ export async function requireOwnPassPhrase(actor: Actor, passPhrase: string, poi
   await refuseWhileBlocked([subjects.account], new Date())
   const { isRight } = await verifyPassPhrase(passPhrase, user.passPhraseHash)
   if (isRight) return user
-  await countFailure(subjects, new Date())
+  await outsideTransaction(() =>
+    inTransaction(async () => {
+      await countFailure(subjects, new Date())
+      await appendAudit({ actor, chain: chainOf.signIns, action: 'pass-phrase:refused', record: { kind: 'user', id: user.id } })
+    }),
+  )
   throw new InvalidFieldError(pointer, 'This is not your pass-phrase.')
 }
 
