@@ -5,10 +5,19 @@ import { aboutEndpoints } from './about.ts'
 import { apiDescriptionEndpoints } from './api-description.ts'
 import { authEndpoints } from './auth.ts'
 import { batchEndpoints } from './batches.ts'
+import { changeoverEndpoints } from './changeovers.ts'
 import { healthEndpoints } from './health.ts'
+import { machineEventEndpoints } from './machine-events.ts'
 
 /** Every endpoint of the API: the router, the API description and the role table of the tests all read this list. */
 export function allEndpoints(config: Config): Endpoint[] {
-  const endpoints = [...healthEndpoints, ...aboutEndpoints(config), ...authEndpoints(config), ...batchEndpoints]
+  const endpoints = [
+    ...healthEndpoints,
+    ...aboutEndpoints(config),
+    ...authEndpoints(config),
+    ...batchEndpoints,
+    ...changeoverEndpoints,
+    ...machineEventEndpoints,
+  ]
   return [...endpoints, ...apiDescriptionEndpoints(endpoints, packageJson.version)]
 }

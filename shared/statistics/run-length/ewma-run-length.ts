@@ -9,7 +9,7 @@ export interface EwmaSettings {
   width: number
 }
 
-/** More nodes where the kernel is narrow beside the limits; 30 a kernel SD would be plenty, and 400 bound the work. */
+/** Ten nodes to the SD of a step, so that a narrow kernel is still resolved; 400 bound the work. */
 function nodesFor(halfWidth: number, kernelSd: number): number {
   return Math.min(400, Math.max(80, Math.ceil((20 * halfWidth) / kernelSd)))
 }

@@ -16,7 +16,7 @@ export interface SilentRuns {
 }
 
 /** Where the summing of silent shares gives up: a chart that stays silent this long does not see the change. */
-const MAX_POINTS = 100_000
+const MAX_POINTS = 50_000
 
 /**
  * The average run length as the sum of the silent shares: ARL = Σ P(no signal in the first t points), t = 0, 1, 2 …
