@@ -1,4 +1,3 @@
-import { normalCdf } from '/tmp/stat1/normal.ts'
 import { requireWhole } from './errors.ts'
 
 const SIZES = { min: 2, max: 1000 }
@@ -112,17 +111,17 @@ function rememberingSizes<T>(workOut: (n: number) => T): (n: number) => T {
  * 1e-14 is left, also for a thousand values.
  */
 const rangeMoments = rememberingSizes((n) => {
-  const { nodes, weights, spans, densities } = rangeGrid()
+  const { nodes, spans, densities } = rangeGrid()
   let mean = 0
   let half = 0
-  for (let k = 0; k < nodes.length; k++) {
+  nodes.forEach(({ at, weight }, k) => {
     let within = 0
     const row = k * densities.length
     for (let j = 0; j < densities.length; j++) within += densities[j]! * spans[row + j]! ** (n - 1)
-    const beyond = weights[k]! * (1 - n * within)
+    const beyond = weight * (1 - n * within)
     mean += beyond
-    half += nodes[k]! * beyond
-  }
+    half += at * beyond
+  })
   return { mean, sd: Math.sqrt(2 * half - mean * mean) }
 })
 
@@ -140,21 +139,44 @@ const WIDEST_RANGE = 14
 const FARTHEST_VALUE = 9
 const STEPS_A_SIGMA = 16
 
-/** Nodes over w, and Φ(x + w) − Φ(x) for each of them at each x: the same for every n, so worked out once, when first needed. */
+/** Nodes over w, and the normal area from x to x + w for each of them at each x: the same for every n, worked out when first needed. */
 const rangeGrid = once(() => {
-  const nodes: number[] = []
-  const weights: number[] = []
-  for (let panel = 0; panel < WIDEST_RANGE; panel++) {
-    for (const [node, weight] of GAUSS_LEGENDRE) {
-      nodes.push(panel + 0.5 - node / 2, panel + 0.5 + node / 2)
-      weights.push(weight / 2, weight / 2)
-    }
-  }
+  const panels = Array.from({ length: WIDEST_RANGE }, (_, panel) => ({ panel, nodes: gaussLegendreOver(panel, 1) }))
   const xs = Array.from({ length: 2 * FARTHEST_VALUE * STEPS_A_SIGMA + 1 }, (_, j) => j / STEPS_A_SIGMA - FARTHEST_VALUE)
-  const densities = Float64Array.from(xs, (x) => Math.exp(-(x * x) / 2) / Math.sqrt(2 * Math.PI) / STEPS_A_SIGMA)
-  const spans = Float64Array.from(nodes.flatMap((w) => xs.map((x) => normalCdf(x + w) - normalCdf(x))))
-  return { nodes, weights, spans, densities }
+  const densities = Float64Array.from(xs, (x) => normalDensity(x) / STEPS_A_SIGMA)
+  const nodes = panels.flatMap((each) => each.nodes)
+  const spans = new Float64Array(nodes.length * xs.length)
+  xs.forEach((x, j) => {
+    let area = 0
+    let k = 0
+    for (const { panel, nodes: within } of panels) {
+      for (const { at } of within) spans[k++ * xs.length + j] = area + normalArea(x + panel, at - panel)
+      area += normalArea(x + panel, 1)
+    }
+  })
+  return { nodes, spans, densities }
 })
+
+function gaussLegendreOver(from: number, width: number): { at: number; weight: number }[] {
+  const middle = from + width / 2
+  return GAUSS_LEGENDRE.flatMap(([node, weight]) =>
+    [-node, node].map((each) => ({ at: middle + (each * width) / 2, weight: (weight * width) / 2 })),
+  )
+}
+
+function normalDensity(x: number): number {
+  return Math.exp((-x * x) / 2) / Math.sqrt(2 * Math.PI)
+}
+
+/** The area under the normal density over a stretch no wider than one sigma, where twelve nodes leave no error that a number could hold. */
+function normalArea(from: number, width: number): number {
+  let area = 0
+  for (const [node, weight] of GAUSS_LEGENDRE) {
+    const reach = (node * width) / 2
+    area += weight * (normalDensity(from + width / 2 - reach) + normalDensity(from + width / 2 + reach))
+  }
+  return (area * width) / 2
+}
 
 function once<T extends object>(workOut: () => T): () => T {
   let found: T | undefined

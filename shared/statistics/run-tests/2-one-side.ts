@@ -1,5 +1,6 @@
 import { inWords, inWordsFirst, plural } from './number-words.ts'
-import { pointsUpTo, type Hit, type RunTest } from './run-test.ts'
+import type { RunTest } from './run-test.ts'
+import { endsOfRuns, hitsOf } from './runs.ts'
 
 /**
  * Nine points in a row on one side of the centre line; a point exactly on it is on neither side and ends the run.
@@ -10,19 +11,10 @@ export const oneSide: RunTest = {
   title: 'Nine in a row on one side of the centre line',
   needs: 'symmetry',
   length: { usual: 9, min: 2, max: 100 },
-  detect: ({ points, center }, { from, to }, length) => {
-    const hits: Hit[] = []
-    // How many points the run holds, counted downwards below the centre line.
-    let run = 0
-    for (let point = from; point < to; point++) {
-      const distance = points[point]! - center[point]!
-      if (distance > 0) run = run > 0 ? run + 1 : 1
-      else if (distance < 0) run = run < 0 ? run - 1 : -1
-      else run = 0
-      if (run >= length) hits.push({ point, points: pointsUpTo(point, length), side: 'above' })
-      else if (-run >= length) hits.push({ point, points: pointsUpTo(point, length), side: 'below' })
-    }
-    return hits
+  detect: ({ points, center }, stretch, length) => {
+    const above = endsOfRuns(stretch, length, (point) => points[point]! > center[point]!)
+    const below = endsOfRuns(stretch, length, (point) => points[point]! < center[point]!)
+    return [...hitsOf(above, length, 'above'), ...hitsOf(below, length, 'below')]
   },
   name: (_hit, length) => `${inWords(length)} on one side`,
   sentence: ({ side = 'above' }, { noun }, length) => `${inWordsFirst(length)} ${plural(noun)} in a row lie ${side} the centre line.`,

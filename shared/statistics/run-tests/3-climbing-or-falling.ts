@@ -1,5 +1,6 @@
 import { inWords, inWordsFirst, plural } from './number-words.ts'
-import { pointsUpTo, type Hit, type RunTest } from './run-test.ts'
+import type { RunTest } from './run-test.ts'
+import { endsOfRuns, hitsOf } from './runs.ts'
 
 /**
  * Six points in a row, each higher (or each lower) than the one before: five steps. Equal neighbours end the run.
@@ -11,18 +12,10 @@ export const climbingOrFalling: RunTest = {
   needs: 'independence',
   length: { usual: 6, min: 3, max: 100 },
   detect: ({ ordered }, { from, to }, length) => {
-    const hits: Hit[] = []
-    // Steps in one direction so far, counted downwards when falling.
-    let steps = 0
-    for (let point = from + 1; point < to; point++) {
-      const step = ordered[point]! - ordered[point - 1]!
-      if (step > 0) steps = steps > 0 ? steps + 1 : 1
-      else if (step < 0) steps = steps < 0 ? steps - 1 : -1
-      else steps = 0
-      if (steps >= length - 1) hits.push({ point, points: pointsUpTo(point, length), side: 'above' })
-      else if (-steps >= length - 1) hits.push({ point, points: pointsUpTo(point, length), side: 'below' })
-    }
-    return hits
+    const steps = { from: from + 1, to }
+    const climbing = endsOfRuns(steps, length - 1, (point) => ordered[point]! > ordered[point - 1]!)
+    const falling = endsOfRuns(steps, length - 1, (point) => ordered[point]! < ordered[point - 1]!)
+    return [...hitsOf(climbing, length, 'above'), ...hitsOf(falling, length, 'below')]
   },
   name: ({ side }, length) => `${inWords(length)} ${side === 'above' ? 'climbing' : 'falling'}`,
   sentence: ({ side }, { noun }, length) =>

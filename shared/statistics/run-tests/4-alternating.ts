@@ -1,5 +1,6 @@
 import { inWords, inWordsFirst, plural } from './number-words.ts'
-import { pointsUpTo, type Hit, type RunTest } from './run-test.ts'
+import type { RunTest } from './run-test.ts'
+import { endsOfRuns, hitsOf } from './runs.ts'
 
 /**
  * Fourteen points in a row going up and down in turn: thirteen steps, each against the one before. Equal neighbours end the run.
@@ -11,19 +12,16 @@ export const alternating: RunTest = {
   needs: 'independence',
   length: { usual: 14, min: 3, max: 100 },
   detect: ({ ordered }, { from, to }, length) => {
-    const hits: Hit[] = []
-    let steps = 0
-    let before = 0
-    for (let point = from + 1; point < to; point++) {
-      const step = ordered[point]! - ordered[point - 1]!
-      const direction = step > 0 ? 1 : step < 0 ? -1 : 0
-      if (direction === 0) steps = 0
-      else steps = direction === -before ? steps + 1 : 1
-      before = direction
-      if (steps >= length - 1) hits.push({ point, points: pointsUpTo(point, length) })
-    }
-    return hits
+    const turns = endsOfRuns({ from: from + 2, to }, length - 2, (point) =>
+      isTurn(ordered[point - 2]!, ordered[point - 1]!, ordered[point]!),
+    )
+    return hitsOf(turns, length)
   },
   name: (_hit, length) => `${inWords(length)} alternating`,
   sentence: (_hit, { noun }, length) => `${inWordsFirst(length)} ${plural(noun)} in a row go up and down in turn.`,
+}
+
+/** Whether the middle one of three is above, or below, both its neighbours. */
+function isTurn(before: number, middle: number, after: number): boolean {
+  return (middle > before && middle > after) || (middle < before && middle < after)
 }

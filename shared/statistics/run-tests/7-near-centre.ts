@@ -1,5 +1,6 @@
 import { inWords, inWordsFirst, plural } from './number-words.ts'
-import { pointsUpTo, type Hit, type RunTest } from './run-test.ts'
+import type { RunTest } from './run-test.ts'
+import { endsOfRuns, hitsOf } from './runs.ts'
 
 /**
  * Fifteen points in a row within 1 sigma of the centre line, on either side; a point exactly on 1 sigma is within.
@@ -11,18 +12,10 @@ export const nearCentre: RunTest = {
   title: 'Fifteen in a row within 1 sigma of the centre line',
   needs: 'normality',
   length: { usual: 15, min: 2, max: 100 },
-  detect: ({ points, center, sigma }, { from, to }, length) => {
-    const hits: Hit[] = []
-    let run = 0
-    for (let point = from; point < to; point++) {
-      const value = points[point]!
-      const zone = sigma[point]!
-      // Without any spread there is no zone, and no "too quiet".
-      const isWithin = zone > 0 && value <= center[point]! + zone && value >= center[point]! - zone
-      run = isWithin ? run + 1 : 0
-      if (run >= length) hits.push({ point, points: pointsUpTo(point, length) })
-    }
-    return hits
+  detect: ({ points, center, sigma }, stretch, length) => {
+    // Without any spread there is no zone, and no "too quiet".
+    const isWithin = (point: number): boolean => sigma[point]! > 0 && Math.abs(points[point]! - center[point]!) <= sigma[point]!
+    return hitsOf(endsOfRuns(stretch, length, isWithin), length)
   },
   name: (_hit, length) => `${inWords(length)} within 1 sigma`,
   sentence: (_hit, { noun }, length) =>

@@ -32,5 +32,7 @@ export interface RunTest {
 
 /** The `length` points that end at `point`. */
 export function pointsUpTo(point: number, length: number): number[] {
-  return Array.from({ length }, (_, place) => point - length + 1 + place)
+  const points: number[] = []
+  for (let each = point - length + 1; each <= point; each++) points.push(each)
+  return points
 }

@@ -6,26 +6,40 @@ import { pointsUpTo, type Hit, type RunTest, type Side } from './run-test.ts'
  * Points beyond a zone line that complete "`needed` of `needed` + 1 beyond it on one side". A point inside never completes
  * the pattern, a point exactly on the line is inside, and the window is shorter where the stretch begins.
  * @param zone the line, in sigmas from the centre
- * @param needed points beyond it, at most 30
+ * @param needed points beyond it, at most 29
  */
-export function mostBeyond(panel: Panel, { from, to }: Stretch, zone: number, needed: number): Hit[] {
-  const { points, center, sigma } = panel
-  const window = 2 ** (needed + 1) - 1
+export function mostBeyond({ points, center, sigma }: Panel, { from, to }: Stretch, zone: number, needed: number): Hit[] {
   const hits: Hit[] = []
-  let above = 0
-  let below = 0
+  const above = new Window(needed)
+  const below = new Window(needed)
   for (let point = from; point < to; point++) {
-    const middle = center[point]!
     const reach = zone * sigma[point]!
-    const isAbove = points[point]! > middle + reach
-    const isBelow = points[point]! < middle - reach
-    // One bit a point, the newest lowest: the window slides by a shift.
-    above = ((above << 1) | Number(isAbove)) & window
-    below = ((below << 1) | Number(isBelow)) & window
-    if (isAbove && bitsIn(above) >= needed) hits.push(hitOf(point, above, needed, 'above'))
-    if (isBelow && bitsIn(below) >= needed) hits.push(hitOf(point, below, needed, 'below'))
+    if (points[point]! > center[point]! + reach) above.add(point, 'above', hits)
+    else if (points[point]! < center[point]! - reach) below.add(point, 'below', hits)
   }
   return hits
+}
+
+/** Which of the last `needed` + 1 points were beyond on one side, one bit a point, the newest lowest; moved only when one is. */
+class Window {
+  private seen = 0
+  private newest = -Infinity
+  private readonly width: number
+  private readonly mask: number
+
+  constructor(private readonly needed: number) {
+    this.width = needed + 1
+    this.mask = 2 ** this.width - 1
+  }
+
+  add(point: number, side: Side, hits: Hit[]): void {
+    const passed = point - this.newest
+    const kept = passed < this.width ? (this.seen << passed) & this.mask : 0
+    this.seen = kept | 1
+    this.newest = point
+    if (bitsIn(this.seen) < this.needed) return
+    hits.push({ point, points: pointsUpTo(point, this.width).filter((each) => (this.seen >> (point - each)) & 1), side })
+  }
 }
 
 /** What tests of a zone say: the name and the sentence differ by the zone alone. */
@@ -37,8 +51,4 @@ function bitsIn(mask: number): number {
   let bits = 0
   for (let left = mask; left !== 0; left &= left - 1) bits++
   return bits
-}
-
-function hitOf(point: number, mask: number, needed: number, side: Side): Hit {
-  return { point, points: pointsUpTo(point, needed + 1).filter((each) => (mask >> (point - each)) & 1), side }
 }
