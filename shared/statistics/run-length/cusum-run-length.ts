@@ -32,7 +32,10 @@ export function sidesCombineExactly({ k, h, headStart }: CusumSettings): boolean
 export function cusumRunLength(settings: CusumSettings, shift: number, sd: number): number {
   const upper = oneSided(settings, shift, sd)
   const lower = oneSided(settings, -shift, sd)
-  return (upper.fromStart * lower.fromZero + upper.fromZero * lower.fromStart - upper.fromZero * lower.fromZero) / (upper.fromZero + lower.fromZero)
+  return (
+    (upper.fromStart * lower.fromZero + upper.fromZero * lower.fromStart - upper.fromZero * lower.fromZero) /
+    (upper.fromZero + lower.fromZero)
+  )
 }
 
 function oneSided({ k, h, headStart }: CusumSettings, shift: number, sd: number): { fromZero: number; fromStart: number } {

@@ -9,9 +9,9 @@ export function zoneChances(mean: number, sd: number): number[] {
   const below = ZONE_BORDERS.map((border) => normalCumulative((border - mean) / sd))
   const above = ZONE_BORDERS.map((border) => normalCumulative((mean - border) / sd))
   // The smaller of the two tails is the more exact one, so each zone takes its difference on its own side of the mean.
-  const between = below.slice(1).map((upper, place) =>
-    ZONE_BORDERS[place]! >= mean ? above[place]! - above[place + 1]! : upper - below[place]!,
-  )
+  const between = below
+    .slice(1)
+    .map((upper, place) => (ZONE_BORDERS[place]! >= mean ? above[place]! - above[place + 1]! : upper - below[place]!))
   return [below[0]!, ...between, above.at(-1)!]
 }
 
