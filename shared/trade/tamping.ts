@@ -24,7 +24,7 @@ export interface Lever {
   id: LeverId
   name: string
   unit: 'mm' | 'indexes/min' | 'N'
-  /** The largest single move, in `unit`; absent where the setting is no means to move the mean during a run. */
+  /** The largest single move, in `unit`; absent where no published or usual limit is known, so that none is assumed. */
   maxMove?: { coarse: number; fine: number }
   /** The smallest step that the scale shows, in `unit`. */
   resolution: number
@@ -61,8 +61,7 @@ export const LEVER_TABLE: readonly Lever[] = [
     id: 'bed-height',
     name: 'Powder-bed height',
     unit: 'mm',
-    maxMove: { coarse: 2, fine: 1 },
-    resolution: 0.5,
+    resolution: 1,
     effectOnMean: 'More for cohesive powder.',
     effectOnSpread: 'Too low: starved bores. Too high: packing, dragging pins.',
     source: 'bench-filler',
