@@ -5,6 +5,7 @@ import { aboutEndpoints } from './about.ts'
 import { apiDescriptionEndpoints } from './api-description.ts'
 import { authEndpoints } from './auth.ts'
 import { batchEndpoints } from './batches.ts'
+import { calculationEndpoints } from './calculations/index.ts'
 import { changeoverEndpoints } from './changeovers.ts'
 import { healthEndpoints } from './health.ts'
 import { machineEventEndpoints } from './machine-events.ts'
@@ -18,6 +19,7 @@ export function allEndpoints(config: Config): Endpoint[] {
     ...batchEndpoints,
     ...changeoverEndpoints,
     ...machineEventEndpoints,
+    ...calculationEndpoints,
   ]
   return [...endpoints, ...apiDescriptionEndpoints(endpoints, packageJson.version)]
 }
