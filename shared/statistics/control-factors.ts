@@ -1,3 +1,4 @@
+import { normalDensity } from './distributions/normal.ts'
 import { requireWhole } from './errors.ts'
 
 const SIZES = { min: 2, max: 1000 }
@@ -162,10 +163,6 @@ function gaussLegendreOver(from: number, width: number): { at: number; weight: n
   return GAUSS_LEGENDRE.flatMap(([node, weight]) =>
     [-node, node].map((each) => ({ at: middle + (each * width) / 2, weight: (weight * width) / 2 })),
   )
-}
-
-function normalDensity(x: number): number {
-  return Math.exp((-x * x) / 2) / Math.sqrt(2 * Math.PI)
 }
 
 /** The area under the normal density over a stretch no wider than one sigma, where twelve nodes leave no error that a number could hold. */

@@ -41,7 +41,7 @@ function medianOfThree(a: number, b: number, c: number): number {
  * @returns the median in the unit of the values
  */
 export function medianOf(values: ArrayLike<number>): number {
-  const copy = Float64Array.from(values)
+  const copy = new Float64Array(values)
   const middle = copy.length >> 1
   const upper = selectInPlace(copy, middle)
   if (copy.length % 2 === 1) return upper
