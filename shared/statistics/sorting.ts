@@ -54,7 +54,7 @@ function countDigit(bits: Uint32Array, { word, shift }: { word: number; shift: n
 
 function sortByDigits(bits: Uint32Array): Uint32Array {
   let from = bits
-  let to = new Uint32Array(bits.length)
+  let to: Uint32Array = new Uint32Array(bits.length)
   for (const digit of DIGITS) {
     const count = countDigit(from, digit)
     if (count.includes(from.length / 2)) continue
