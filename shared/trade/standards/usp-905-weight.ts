@@ -2,15 +2,7 @@ import { requirePositive, requireValues, StatisticsError } from '#shared/statist
 import { momentsOf } from '#shared/statistics/summary.ts'
 import type { WeighingBasis } from '#shared/vocabulary.ts'
 import { judgeBasis, shown, type AcceptanceStandard, type Explained } from './standard.ts'
-import {
-  judgeContents,
-  namedLines,
-  USP_905_EDITION,
-  USP_905_STAGES,
-  worstOf,
-  type UniformityAnswer,
-  type UniformityFigures,
-} from './usp-905.ts'
+import { judgeContents, namedLines, USP_905_EDITION, USP_905_STAGES, worstOf, type UniformityFigures } from './usp-905.ts'
 
 /** The least amount and the least share of the fill at which weight may stand for content. */
 export const WEIGHT_VARIATION_FROM = { claimMg: 25, sharePercent: 25 } as const
@@ -46,14 +38,16 @@ export interface Eligibility {
   sentence: string
 }
 
-type WeightFigures = UniformityFigures & {
+interface WeightFigures extends UniformityFigures {
   /** The content of each unit, percent of claim, estimated from its weight. */
   contents: number[]
   eligibility?: Eligibility
 }
 
-export type WeightUniformityAnswer = Omit<UniformityAnswer, 'actives'> &
-  WeightFigures & { actives?: ({ active: string } & WeightFigures)[] }
+export interface WeightUniformityAnswer extends WeightFigures, Explained {
+  standard: 'usp-905-weight'
+  actives?: ({ active: string } & WeightFigures)[]
+}
 
 /**
  * Tells whether weight variation may stand for content uniformity: the active is at least 25 mg and at least 25 % of the

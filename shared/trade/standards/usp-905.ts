@@ -55,7 +55,7 @@ export interface Usp905Request {
 
 /** The figures of the deciding active, and, for a unit of several actives, those of each. */
 export interface UniformityAnswer extends UniformityFigures, Explained {
-  standard: 'usp-905' | 'usp-905-weight'
+  standard: 'usp-905'
   actives?: ({ active: string } & UniformityFigures)[]
 }
 
