@@ -44,7 +44,7 @@ export class Sample extends Model<InferAttributes<Sample>, InferCreationAttribut
   declare weighedById: string
   declare entry: WeighingEntry
   declare verdict: CreationOptional<Verdict | null>
-  declare verdictReasons: CreationOptional<string[] | null>
+  declare verdictReasons: CreationOptional<object[] | null>
   declare isLate: CreationOptional<boolean>
   declare correctionCount: CreationOptional<number>
   declare abandonedReason: CreationOptional<string | null>

@@ -9,6 +9,7 @@ import { calculationEndpoints } from './calculations/index.ts'
 import { changeoverEndpoints } from './changeovers.ts'
 import { healthEndpoints } from './health.ts'
 import { machineEventEndpoints } from './machine-events.ts'
+import { sampleEndpoints } from './samples.ts'
 
 /** Every endpoint of the API: the router, the API description and the role table of the tests all read this list. */
 export function allEndpoints(config: Config): Endpoint[] {
@@ -19,6 +20,7 @@ export function allEndpoints(config: Config): Endpoint[] {
     ...batchEndpoints,
     ...changeoverEndpoints,
     ...machineEventEndpoints,
+    ...sampleEndpoints,
     ...calculationEndpoints,
   ]
   return [...endpoints, ...apiDescriptionEndpoints(endpoints, packageJson.version)]
