@@ -22,9 +22,11 @@ interface Thread {
   deadline: NodeJS.Timeout | undefined
 }
 
-/** The reason a cancelled task is rejected with; the client that asked has gone, so nobody reads it. */
-export class SimulationCancelledError extends Error {
-  override readonly name = 'SimulationCancelledError'
+/** The reason a cancelled task is rejected with; the client that asked has gone, so it is no failure to be looked into. */
+export class SimulationCancelledError extends UnavailableError {
+  constructor() {
+    super('The request was withdrawn before the simulation ended.')
+  }
 }
 
 /** A few threads that simulate, so that no answer of seconds ever holds up a weight. */
@@ -44,7 +46,7 @@ export class SimulationPool {
    * @throws {UnavailableError} when too many wait, or the time is up
    */
   run<T extends SimulationTask>(task: T, signal?: AbortSignal): Promise<SimulationResults[T['kind']]> {
-    if (signal?.aborted) return Promise.reject(new SimulationCancelledError('Cancelled before it began.'))
+    if (signal?.aborted) return Promise.reject(new SimulationCancelledError())
     if (this.#waiting.length >= this.#limits.maxWaiting) {
       return Promise.reject(new UnavailableError('Too many simulations are waiting at this moment. Try again in a few seconds.', 5))
     }
@@ -96,8 +98,8 @@ export class SimulationPool {
     const place = this.#waiting.indexOf(job)
     if (place >= 0) this.#waiting.splice(place, 1)
     const thread = this.#threads.find((each) => each.job === job)
-    if (thread) void this.#end(thread, new SimulationCancelledError('Cancelled.'))
-    else job.reject(new SimulationCancelledError('Cancelled.'))
+    if (thread) void this.#end(thread, new SimulationCancelledError())
+    else job.reject(new SimulationCancelledError())
   }
 
   /** A thread cannot be interrupted, only ended; the next task starts another. */
