@@ -120,3 +120,24 @@ export class IdempotencyKeyMissingError extends ScrupleError {
     super('Send an Idempotency-Key header of 8 to 80 visible characters, the same for each retry of this request.')
   }
 }
+
+/** A balance file that holds anything wrong is refused whole; every row at fault is named. */
+export class BalanceFileRefusedError extends ScrupleError {
+  override readonly status = 422
+  override readonly slug = 'balance-file-refused'
+  constructor(refused: {
+    message: string
+    total: number
+    problems: readonly { line: number; column: string; found: string; expected: string; message: string }[]
+  }) {
+    const issues = refused.problems.map(({ line, column, found, expected, message }): Issue => ({
+      pointer: `/rows/${line}`,
+      row: line,
+      column,
+      found,
+      expected,
+      message,
+    }))
+    super(refused.message, { total: refused.total, issues })
+  }
+}

@@ -3,7 +3,7 @@ import { Router, type Request, type RequestHandler, type Response } from 'expres
 import { rateLimit } from 'express-rate-limit'
 import multer from 'multer'
 import type { Config } from '../config.ts'
-import { ForbiddenError } from '../errors.ts'
+import { ForbiddenError, InvalidFieldError, PayloadTooLargeError } from '../errors.ts'
 import { mayAnywhere, type Actor } from './actor.ts'
 import { authenticate } from './authenticate.ts'
 import type { Endpoint, UploadedFile } from './endpoint.ts'
@@ -29,8 +29,15 @@ function receiveFile(endpoint: Endpoint, uploadDirectory: string): RequestHandle
 
 function run(handler: RequestHandler, request: Request, response: Response): Promise<void> {
   return new Promise((resolve, reject) => {
-    void handler(request, response, (error?: unknown) => (error === undefined ? resolve() : reject(error)))
+    void handler(request, response, (error?: unknown) => (error === undefined ? resolve() : reject(uploadRefusal(error))))
   })
+}
+
+/** What multer refuses, in words for a person. */
+function uploadRefusal(error: unknown): unknown {
+  if (!(error instanceof multer.MulterError)) return error
+  if (error.code === 'LIMIT_FILE_SIZE') return new PayloadTooLargeError('The file', '100 MB')
+  return new InvalidFieldError('/file', 'Send exactly one file, in the field “file”.')
 }
 
 function uploadedFile({ file }: Request): UploadedFile | undefined {

@@ -10,6 +10,8 @@ import { changeoverEndpoints } from './changeovers.ts'
 import { healthEndpoints } from './health.ts'
 import { machineEventEndpoints } from './machine-events.ts'
 import { sampleEndpoints } from './samples.ts'
+import { signalEndpoints } from './signals.ts'
+import { weighingFileEndpoints } from './weighing-files.ts'
 
 /** Every endpoint of the API: the router, the API description and the role table of the tests all read this list. */
 export function allEndpoints(config: Config): Endpoint[] {
@@ -21,6 +23,8 @@ export function allEndpoints(config: Config): Endpoint[] {
     ...changeoverEndpoints,
     ...machineEventEndpoints,
     ...sampleEndpoints,
+    ...signalEndpoints,
+    ...weighingFileEndpoints,
     ...calculationEndpoints,
   ]
   return [...endpoints, ...apiDescriptionEndpoints(endpoints, packageJson.version)]
