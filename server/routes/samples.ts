@@ -3,7 +3,6 @@ import { BatchId } from '#shared/schemas/batches.ts'
 import { Id } from '#shared/schemas/field.ts'
 import {
   AbandonSample,
-  CompleteSample,
   CorrectWeighing,
   DueSample,
   OpenSample,
@@ -103,7 +102,6 @@ export const sampleEndpoints = [
     allow: 'sample:record',
     idempotent: true,
     params: SampleId,
-    body: CompleteSample,
     answer: { status: 200, schema: SampleAnswer },
     problems: [404, 409],
     handle: ({ actor, params }) => completeSample(actor, params.sampleId),

@@ -44,10 +44,6 @@ export type CorrectWeighing = z.output<typeof CorrectWeighing>
 export const AbandonSample = z.strictObject({ reason: Reason }).meta({ id: 'AbandonSample', description: 'Why a sample is not finished.' })
 export type AbandonSample = z.output<typeof AbandonSample>
 
-export const CompleteSample = z
-  .strictObject({})
-  .meta({ id: 'CompleteSample', description: 'Nothing more is needed: the weights are there.' })
-
 export const VerdictReason = z
   .object({ test: z.string(), name: z.string(), severity: z.enum(['alert', 'action']), sentence: z.string() })
   .meta({ id: 'VerdictReason', description: 'A limit or a run test that a sample hit, in one sentence.' })

@@ -1,14 +1,12 @@
+import { normalLogCumulative } from './distributions/normal-log.ts'
 import { normalCumulative, normalQuantile } from './distributions/normal.ts'
 import { requireValues, StatisticsError } from './errors.ts'
+import { sortedCopy } from './sorting.ts'
 import { momentsOf } from './summary.ts'
 
 export interface Normality {
   statistic: number
   pValue: number
-}
-
-function sorted(values: ArrayLike<number>): Float64Array {
-  return Float64Array.from(values).sort()
 }
 
 /** Mean and SD of the values; equal values have no shape to test. */
@@ -30,14 +28,14 @@ function standardise(values: Float64Array): { mean: number; sd: number } {
  */
 export function andersonDarling(values: ArrayLike<number>): Normality {
   requireValues('values', values, { min: 8 })
-  const x = sorted(values)
+  const x = sortedCopy(values)
   const n = x.length
   const { mean, sd } = standardise(x)
   let sum = 0
   for (let i = 0; i < n; i++) {
-    const below = (x[i]! - mean) / sd
-    const above = (mean - x[n - 1 - i]!) / sd
-    sum += (2 * i + 1) * (Math.log(normalCumulative(below)) + Math.log(normalCumulative(above)))
+    const z = (x[i]! - mean) / sd
+    // Each value stands once for itself and once as the mirror of the one as far from the other end.
+    sum += (2 * i + 1) * normalLogCumulative(z) + (2 * (n - i) - 1) * normalLogCumulative(-z)
   }
   const statistic = -n - sum / n
   return { statistic, pValue: andersonDarlingProbability(statistic * (1 + 0.75 / n + 2.25 / (n * n))) }
@@ -89,7 +87,7 @@ export function shapiroWilk(values: ArrayLike<number>): Normality {
   requireValues('values', values, { min: 3 })
   if (values.length > 5000)
     throw new StatisticsError('too-many-values', 'values', `The approximation holds up to 5000 values; there are ${values.length}.`)
-  const x = sorted(values)
+  const x = sortedCopy(values)
   const n = x.length
   const { mean } = standardise(x)
   const a = shapiroWilkWeights(n)
