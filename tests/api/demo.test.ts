@@ -10,6 +10,7 @@ import { Batch } from '#server/models/batch.ts'
 import { Changeover } from '#server/models/changeover.ts'
 import { Disposition } from '#server/models/disposition.ts'
 import { Machine } from '#server/models/machine.ts'
+import { OutboxMail } from '#server/models/outbox-mail.ts'
 import { Product } from '#server/models/product.ts'
 import { Sample } from '#server/models/sample.ts'
 import { Signal } from '#server/models/signal.ts'
@@ -106,6 +107,9 @@ test('raises a signal for each sample beyond a limit: closed where the batch is 
   const filler = await Machine.findOne({ where: { siteId: site.id, code: 'F2' }, rejectOnEmpty: true })
   const running = batches.find(({ state, machineId }) => state === 'running' && machineId === filler.id)
   const active = await Signal.findAll({ where: { batchId: running?.id ?? '', state: 'active' } })
+  const mails = await OutboxMail.findAll({ where: { siteId: site.id } })
+  const open = await Signal.findAll({ where: { batchId: batchIds(), state: 'active', severity: 'action' } })
+  expect(mails.map(({ signalId }) => signalId).toSorted()).toEqual(open.map(({ id }) => id).toSorted())
   expect(active.some(({ sentence }) => sentence.startsWith('The mean '))).toBe(true)
 })
 

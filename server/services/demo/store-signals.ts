@@ -1,6 +1,7 @@
 import { Signal } from '../../models/signal.ts'
 import { newId } from '../../models/new-id.ts'
 import { chainOf } from '../audit.ts'
+import { enqueueMail } from '../enqueue-mail.ts'
 import { insertAll } from './insert-all.ts'
 import type { StoredBatch } from './store-batches.ts'
 import type { DemoContext } from './store-masters.ts'
@@ -19,6 +20,7 @@ export async function storeSignals(batches: readonly StoredBatch[], context: Dem
     Signal,
     rows.map(({ row }) => row),
   )
+  for (const { row } of rows) if (row.state === 'active' && row.severity === 'action') await mailEngineers(row, context)
   for (const { row, acknowledgedBy, closedBy } of rows) {
     const { people, book } = context
     const chain = chainOf.batch(row.batchId)
@@ -38,6 +40,11 @@ export async function storeSignals(batches: readonly StoredBatch[], context: Dem
   }
 }
 
+/** Only what is still open is mailed: nobody wants eight weeks of old alarms. */
+function mailEngineers({ id, number, sentence }: { id: string; number: string; sentence: string }, { siteId }: DemoContext): Promise<void> {
+  return enqueueMail({ siteId, role: 'engineer', subject: `Action: batch ${number}`, text: sentence, signalId: id })
+}
+
 function signalRows({ id: batchId, batch, samples }: StoredBatch, { people }: DemoContext, now: Date) {
   return samples.flatMap(({ sample, row: sampleOf, verdict }) => {
     if (!verdict || verdict.verdict === 'in-control' || !sample.completedAt) return []
@@ -48,7 +55,15 @@ function signalRows({ id: batchId, batch, samples }: StoredBatch, { people }: De
     const acknowledgedBy = isSeen ? (batch.followUp?.acknowledgedBy ?? sample.weighedBy) : null
     const closedBy = isClosed ? (batch.followUp?.closedBy ?? null) : null
     const row = {
-      ...{ id: newId(), batchId, sampleId: sampleOf.id, severity: verdict.verdict, sources: verdict.sources, raisedAt },
+      ...{
+        id: newId(),
+        batchId,
+        number: batch.number,
+        sampleId: sampleOf.id,
+        severity: verdict.verdict,
+        sources: verdict.sources,
+        raisedAt,
+      },
       sentence: verdict.sources
         .map((source) => source.sentence)
         .join(' ')
