@@ -2,11 +2,12 @@ import { DataTypes, Model, type CreationOptional, type InferAttributes, type Inf
 import { BALANCE_CHECK_KINDS, type BalanceCheckKind } from '#shared/vocabulary.ts'
 import { newId } from './new-id.ts'
 
-/** One external check of a balance against a weight. */
+/** One external check of a balance against a weight. For repeatability the reading is the SD of the weighings, the tolerance the largest allowed. */
 export class BalanceCheck extends Model<InferAttributes<BalanceCheck>, InferCreationAttributes<BalanceCheck>> {
   declare id: CreationOptional<string>
   declare balanceId: string
   declare kind: BalanceCheckKind
+  declare referenceWeight: CreationOptional<string>
   declare checkedAt: Date
   declare checkedById: string
   declare nominalMg: number
@@ -22,6 +23,7 @@ export function defineBalanceCheck(sequelize: Sequelize): void {
       id: { type: DataTypes.UUID, primaryKey: true, defaultValue: newId },
       balanceId: { type: DataTypes.UUID, allowNull: false },
       kind: { type: DataTypes.ENUM(...BALANCE_CHECK_KINDS), allowNull: false },
+      referenceWeight: { type: DataTypes.STRING, allowNull: false, defaultValue: '' },
       checkedAt: { type: DataTypes.DATE(3), allowNull: false },
       checkedById: { type: DataTypes.UUID, allowNull: false },
       nominalMg: { type: DataTypes.DECIMAL(12, 4), allowNull: false },

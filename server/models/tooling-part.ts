@@ -13,6 +13,8 @@ export class ToolingPart extends Model<InferAttributes<ToolingPart>, InferCreati
   declare capsulesAtInspection: CreationOptional<number>
   declare capsulesNow: CreationOptional<number>
   declare inspectionInterval: CreationOptional<number | null>
+  /** When the part was taken out of the set; null while it belongs to it. */
+  declare removedAt: CreationOptional<Date | null>
   declare version: CreationOptional<number>
 }
 
@@ -28,6 +30,7 @@ export function defineToolingPart(sequelize: Sequelize): void {
       capsulesAtInspection: { type: DataTypes.BIGINT.UNSIGNED, allowNull: false, defaultValue: 0 },
       capsulesNow: { type: DataTypes.BIGINT.UNSIGNED, allowNull: false, defaultValue: 0 },
       inspectionInterval: { type: DataTypes.BIGINT.UNSIGNED, allowNull: true, defaultValue: null },
+      removedAt: { type: DataTypes.DATE(3), allowNull: true, defaultValue: null },
       version: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false, defaultValue: 1 },
     },
     { sequelize, tableName: 'tooling_parts', underscored: true, timestamps: false },
