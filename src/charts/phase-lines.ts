@@ -55,7 +55,7 @@ export function phaseBands(chart: BatchChart, tokens: ChartTokens, from: number,
       name: label,
       xAxis: starts[place] ?? from,
       itemStyle: { color: place % 2 === 0 ? tokens.raised : tokens.sunk, opacity: place % 2 === 0 ? 0.65 : 0.9 },
-      label: { show: true, position: 'insideTopLeft', color: tokens.textSecond, fontSize: 12, distance: [8, 6] },
+      label: { show: true, position: 'insideTopLeft', color: tokens.textSecond, fontSize: 12, distance: 8 },
     },
     { xAxis: starts[place + 1] ?? to },
   ])
