@@ -3,6 +3,7 @@ import type { Change, comparePlans, operatingCharacteristic, PlanOption, WatchPl
 import type { PassBound, SampledContents } from '#shared/statistics/pass-bound.ts'
 import type { PassProbability, SimulationSize } from '#shared/statistics/pass-probability.ts'
 import type { RunLengthAnswer, RunLengthRequest } from '#shared/statistics/run-length.ts'
+import type { TuningAdvice, TuningRequest } from '#shared/trade/tuning-advice.ts'
 import type { ChanceRequest } from '#shared/trade/standards/chance-of-passing.ts'
 
 /** What a thread is asked to work out. */
@@ -11,6 +12,7 @@ export type SimulationTask =
   | { kind: 'chance-of-passing'; request: ChanceRequest }
   | { kind: 'pass-bound'; sample: SampledContents; size: SimulationSize }
   | { kind: 'operating-characteristic'; plan: WatchPlan; changes: readonly Change[] }
+  | { kind: 'tuning'; request: TuningRequest }
   | { kind: 'compare-plans'; plan: WatchPlan; change: Change; options: readonly PlanOption[] }
 
 /** What it answers, by kind. */
@@ -19,6 +21,7 @@ export interface SimulationResults {
   'chance-of-passing': PassProbability
   'pass-bound': PassBound
   'operating-characteristic': ReturnType<typeof operatingCharacteristic>
+  tuning: TuningAdvice
   'compare-plans': ReturnType<typeof comparePlans>
 }
 

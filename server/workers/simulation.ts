@@ -4,6 +4,7 @@ import { comparePlans, operatingCharacteristic } from '#shared/statistics/operat
 import { passBound } from '#shared/statistics/pass-bound.ts'
 import { averageRunLength } from '#shared/statistics/run-length.ts'
 import { chanceOfPassing } from '#shared/trade/standards/chance-of-passing.ts'
+import { adviseTuning } from '#shared/trade/tuning-advice.ts'
 import type { SimulationReply, SimulationResults, SimulationTask } from './simulation-task.ts'
 
 function run(task: SimulationTask): SimulationResults[SimulationTask['kind']] {
@@ -16,6 +17,8 @@ function run(task: SimulationTask): SimulationResults[SimulationTask['kind']] {
       return passBound(task.sample, task.size)
     case 'operating-characteristic':
       return operatingCharacteristic(task.plan, task.changes)
+    case 'tuning':
+      return adviseTuning(task.request)
     case 'compare-plans':
       return comparePlans(task.plan, task.change, task.options)
   }

@@ -52,12 +52,12 @@ const SAMPLES_SHOWN = 20
  * Assumes  what {@link averageRunLength} assumes: centre and spread known, capsules normal, samples independent.
  * @param plan the plan, weights in mg
  * @param changes at least one and at most 20
- * @throws {StatisticsError} `not-finite`, `not-positive`, `too-few-values`, `too-many-values`, and those of {@link averageRunLength}
+ * @throws {StatisticsError} `not-finite`, `not-positive`, `out-of-range`, `too-few-values`, `too-many-values`, and those of {@link averageRunLength}
  * @see docs/calculations/run-length.md
  */
 export function operatingCharacteristic(plan: WatchPlan, changes: readonly Change[]): OperatingCharacteristic {
-  requirePositive('intervalMinutes', plan.intervalMinutes)
-  requirePositive('capsulesPerHour', plan.capsulesPerHour)
+  requireUpTo('intervalMinutes', plan.intervalMinutes, 1e6)
+  requireUpTo('capsulesPerHour', plan.capsulesPerHour, 1e9)
   requirePositive('sigmaMg', plan.sigmaMg)
   if (changes.length === 0) throw new StatisticsError('too-few-values', 'changes', 'changes needs at least one change.')
   if (changes.length > 20) throw new StatisticsError('too-many-values', 'changes', 'changes can hold at most 20 changes.')
@@ -70,6 +70,11 @@ export function operatingCharacteristic(plan: WatchPlan, changes: readonly Chang
     },
     changes: changes.map((change, place) => foresee(plan, change, place)),
   }
+}
+
+function requireUpTo(argument: string, value: number, most: number): void {
+  requirePositive(argument, value)
+  if (value > most) throw new StatisticsError('out-of-range', argument, `${argument} must be at most ${most}.`)
 }
 
 function requestOf(plan: WatchPlan, { shiftMg = 0, driftMgPerHour = 0 }: Change): RunLengthRequest {

@@ -3,7 +3,7 @@ import type { ChartId } from './charts/index.ts'
 import { cusumRunLength, sidesCombineExactly, type CusumSettings } from './run-length/cusum-run-length.ts'
 import { ewmaRunLength, silentEwmaRuns, type EwmaSettings } from './run-length/ewma-run-length.ts'
 import { cusumWatcher, pointWatcher, simulateChanceOfSignal, simulateRunLength, type Watcher } from './run-length/simulated-runs.ts'
-import { averageFromSilence, chanceOfSignal, type Exposure, type SilentRuns } from './run-length/survival.ts'
+import { averageFromSilence, chanceOfSignal, neverSignals, type Exposure, type SilentRuns } from './run-length/survival.ts'
 import { buildZoneAutomaton, ZONE_TESTS, type ZoneAutomaton } from './run-length/zone-automaton.ts'
 import { silentZoneRuns } from './run-length/zone-run-length.ts'
 import { chooseTests, type ChosenTest } from './run-tests/find-signals.ts'
@@ -62,14 +62,23 @@ export function averageRunLength(request: RunLengthRequest): RunLengthAnswer {
   const plan = readPlan(request)
   const { exposure } = plan
   if (plan.kind === 'ewma' && exposure.isSteady) {
-    return { averageRunLength: ewmaRunLength(plan.ewma, exposure.shiftAt(1), exposure.sd), method: 'exact' }
+    return solved(ewmaRunLength(plan.ewma, exposure.shiftAt(1), exposure.sd))
   }
   if (plan.kind === 'cusum' && exposure.isSteady && sidesCombineExactly(plan.cusum)) {
-    return { averageRunLength: cusumRunLength(plan.cusum, exposure.shiftAt(1), exposure.sd), method: 'exact' }
+    return solved(cusumRunLength(plan.cusum, exposure.shiftAt(1), exposure.sd))
   }
   const silent = silentRunsOf(plan)
   if (silent) return { averageRunLength: averageFromSilence(silent, exposure.isSteady), method: 'exact' }
   return { ...simulateRunLength(watcherOf(plan), exposure, plan.seed), method: 'simulated' }
+}
+
+/** An integral equation is trusted up to here: beyond, its system is too nearly singular for eight digits. */
+const LONGEST_SOLVED = 1e8
+
+function solved(averageRunLength: number): RunLengthAnswer {
+  if (!(averageRunLength > 0 && averageRunLength < LONGEST_SOLVED)) throw neverSignals()
+  // A shift far beyond the limits is seen at once; rounding may leave the sum a hair below one point.
+  return { averageRunLength: Math.max(1, averageRunLength), method: 'exact' }
 }
 
 /**

@@ -147,7 +147,9 @@ function posteriorGiven(
       for (let j = 0; j < size; j++) precision.set(i, j, precision.get(i, j) + (values[i]! * values[j]!) / variances[row]!)
     }
   })
+  if (![...precision.to1DArray(), ...pull.to1DArray()].every(Number.isFinite)) throw tooFarApart()
   const cholesky = new CholeskyDecomposition(precision)
+  if (!cholesky.isPositiveDefinite()) throw tooFarApart()
   const shift = cholesky.solve(pull).to1DArray()
   const logDeterminant = 2 * cholesky.lowerTriangularMatrix.diagonal().reduce((sum, value) => sum + Math.log(value), 0)
   const misfit = surprise.reduce((sum, value, row) => sum + (value * value) / variances[row]!, 0) - dot(pull.to1DArray(), shift)
@@ -157,6 +159,10 @@ function posteriorGiven(
     mean: believed.map((value, place) => value + shift[place]!),
     covariance: cholesky.solve(Matrix.eye(size)),
   }
+}
+
+function tooFarApart(): StatisticsError {
+  return new StatisticsError('out-of-range', 'history', 'Settings, weights and beliefs are too far apart in size to be calculated with.')
 }
 
 function dot(first: readonly number[], second: readonly number[]): number {
@@ -172,14 +178,16 @@ interface Normal {
 function slopeAt(mixture: readonly Component[], place: number): Slope {
   const parts = mixture.map(({ weight, mean, covariance }) => ({ weight, mean: mean[place]!, sd: Math.sqrt(covariance.get(place, place)) }))
   const { mean, sd } = momentsOfMixture(parts)
+  if (!Number.isFinite(mean) || !Number.isFinite(sd)) throw tooFarApart()
   return { mgPerUnit: mean, sd, interval: intervalOfMixture(parts) }
 }
 
 function predictAt(mixture: readonly Component[], row: readonly number[], sampling: number): Prediction {
   const parts = mixture.map(({ weight, scatter, mean, covariance }) => {
-    const variance = dot(row, covariance.mmul(Matrix.columnVector([...row])).to1DArray())
+    const variance = Math.max(0, dot(row, covariance.mmul(Matrix.columnVector([...row])).to1DArray()))
     return { weight, mean: dot(row, mean), levelSd: Math.sqrt(variance), sd: Math.sqrt(variance + scatter * scatter + sampling) }
   })
+  if (!parts.every(({ mean, sd }) => Number.isFinite(mean + sd))) throw tooFarApart()
   const level = momentsOfMixture(parts.map(({ weight, mean, levelSd }) => ({ weight, mean, sd: levelSd })))
   return { meanMg: level.mean, levelSd: level.sd, interval: intervalOfMixture(parts) }
 }

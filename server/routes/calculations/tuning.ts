@@ -1,6 +1,6 @@
 import { TuningAnswer, TuningRequest } from '#shared/schemas/calculations/tuning.ts'
-import { adviseTuning } from '#shared/trade/tuning-advice.ts'
 import { endpoint } from '../../http/endpoint.ts'
+import { simulationPool } from '../../workers/simulation-pool.ts'
 
 const postTuning = endpoint({
   method: 'post',
@@ -9,7 +9,9 @@ const postTuning = endpoint({
   allow: 'signed-in',
   body: TuningRequest,
   answer: { status: 200, schema: TuningAnswer },
-  handle: ({ body }) => adviseTuning(body),
+  problems: [503],
+  // Hundreds of trials of many settings take a third of a second, too long to hold up a weight.
+  handle: ({ body, signal }) => simulationPool().run({ kind: 'tuning', request: body }, signal),
 })
 
 export const tuningEndpoints = [postTuning]

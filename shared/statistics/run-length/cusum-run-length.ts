@@ -1,4 +1,4 @@
-import { Matrix, solve } from 'ml-matrix'
+import { LuDecomposition, Matrix } from 'ml-matrix'
 import { normalCumulative } from '../distributions/normal.ts'
 import { gaussLegendre } from './gauss-legendre.ts'
 
@@ -26,19 +26,24 @@ export function sidesCombineExactly({ k, h, headStart }: CusumSettings): boolean
  * @param settings for which {@link sidesCombineExactly} holds
  * @param shift δ, the mean of a point in sigmas
  * @param sd τ, the SD of a point in the same sigmas
+ * @returns points, infinite where neither side practically ever signals
  * @see E. S. Page, Biometrika 41 (1954) 100–115; J. M. Lucas, R. B. Crosier, Technometrics 24 (1982) 199–205 (both cited from memory);
  *      cases in fixtures/reference/run-length.json
  */
 export function cusumRunLength(settings: CusumSettings, shift: number, sd: number): number {
   const upper = oneSided(settings, shift, sd)
   const lower = oneSided(settings, -shift, sd)
-  return (
-    (upper.fromStart * lower.fromZero + upper.fromZero * lower.fromStart - upper.fromZero * lower.fromZero) /
-    (upper.fromZero + lower.fromZero)
-  )
+  if (!lower) return upper?.fromStart ?? Infinity
+  if (!upper) return lower.fromStart
+  const both = upper.fromStart * lower.fromZero + upper.fromZero * lower.fromStart - upper.fromZero * lower.fromZero
+  return both / (upper.fromZero + lower.fromZero)
 }
 
-function oneSided({ k, h, headStart }: CusumSettings, shift: number, sd: number): { fromZero: number; fromStart: number } {
+/** A side that is silent for longer than this plays no part beside one that signals, and its system is nearly singular. */
+const SILENT_SIDE = 1e12
+
+/** The run lengths of one side, or undefined where it practically never signals. */
+function oneSided({ k, h, headStart }: CusumSettings, shift: number, sd: number): { fromZero: number; fromStart: number } | undefined {
   const size = Math.min(400, Math.max(60, Math.ceil((12 * h) / sd)))
   const { nodes, weights } = gaussLegendre(size, { lower: 0, upper: h })
   const kernel = (from: number, to: number) => Math.exp(-0.5 * ((to - from + k - shift) / sd) ** 2) / (sd * Math.sqrt(2 * Math.PI))
@@ -52,8 +57,11 @@ function oneSided({ k, h, headStart }: CusumSettings, shift: number, sd: number)
       matrix.set(row, place + 1, (row === place + 1 ? 1 : 0) - weights[place]! * kernel(from, nodes[place]!))
     }
   })
-  const lengths = solve(matrix, Matrix.ones(size + 1, 1))
+  const system = new LuDecomposition(matrix)
+  if (system.isSingular()) return undefined
+  const lengths = system.solve(Matrix.ones(size + 1, 1))
   const fromZero = lengths.get(0, 0)
+  if (!(fromZero >= 1 && fromZero < SILENT_SIDE)) return undefined
   let fromStart = 1 + fromZero * toZero(headStart)
   for (let place = 0; place < size; place++) fromStart += weights[place]! * kernel(headStart, nodes[place]!) * lengths.get(place + 1, 0)
   return { fromZero, fromStart }

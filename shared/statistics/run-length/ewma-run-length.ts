@@ -1,4 +1,4 @@
-import { Matrix, solve } from 'ml-matrix'
+import { LuDecomposition, Matrix } from 'ml-matrix'
 import { gaussLegendre, type Quadrature } from './gauss-legendre.ts'
 import type { Exposure, SilentRuns } from './survival.ts'
 
@@ -9,9 +9,9 @@ export interface EwmaSettings {
   width: number
 }
 
-/** Ten nodes to the SD of a step, so that a narrow kernel is still resolved; 400 bound the work. */
+/** Four nodes to the SD of a step: a normal kernel is then resolved to the last digit; 400 bound the work. */
 function nodesFor(halfWidth: number, kernelSd: number): number {
-  return Math.min(400, Math.max(80, Math.ceil((20 * halfWidth) / kernelSd)))
+  return Math.min(400, Math.max(80, Math.ceil((8 * halfWidth) / kernelSd)))
 }
 
 function limitOf({ lambda, width }: EwmaSettings): number {
@@ -34,7 +34,7 @@ function gridOf(settings: EwmaSettings, sd: number): { limit: number; grid: Quad
  * @param settings λ and L
  * @param shift δ, the mean of a point in sigmas
  * @param sd τ, the SD of a point in the same sigmas
- * @throws {StatisticsError} none beyond those of the quadrature
+ * @returns points; without meaning above about 1e12, where the system is nearly singular, and infinite where it is so
  * @see S. V. Crowder, Technometrics 29 (1987) 401–407 (cited from memory); cases in fixtures/reference/run-length.json
  */
 export function ewmaRunLength(settings: EwmaSettings, shift: number, sd: number): number {
@@ -49,7 +49,9 @@ export function ewmaRunLength(settings: EwmaSettings, shift: number, sd: number)
       matrix.set(row, column, (row === column ? 1 : 0) - weights[column]! * kernel(nodes[row]!, nodes[column]!))
     }
   }
-  const lengths = solve(matrix, Matrix.ones(size, 1))
+  const system = new LuDecomposition(matrix)
+  if (system.isSingular()) return Infinity
+  const lengths = system.solve(Matrix.ones(size, 1))
   let runLength = 1
   for (let place = 0; place < size; place++) runLength += weights[place]! * kernel(0, nodes[place]!) * lengths.get(place, 0)
   return runLength

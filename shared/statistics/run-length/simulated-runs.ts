@@ -1,9 +1,8 @@
-import { StatisticsError } from '../errors.ts'
 import { normalDraws } from '../normal-draws.ts'
 import { seededRandom } from '../random.ts'
 import type { ChosenTest } from '../run-tests/find-signals.ts'
 import type { CusumSettings } from './cusum-run-length.ts'
-import type { Exposure } from './survival.ts'
+import { neverSignals, type Exposure } from './survival.ts'
 import type { ZoneAutomaton } from './zone-automaton.ts'
 
 /** A chart that takes one point at a time, in sigmas of its limits; it starts afresh with each run. */
@@ -99,7 +98,7 @@ function manyRuns(watcher: Watcher, exposure: Exposure, draw: () => number, runs
 function oneRun(watcher: Watcher, { shiftAt, sd }: Exposure, draw: () => number, longest: number): number {
   watcher.restart()
   for (let t = 1; t <= longest; t++) if (watcher.signals(shiftAt(t) + sd * draw())) return t
-  throw new StatisticsError('no-convergence', 'tests', 'This chart with these tests practically never signals under this change.')
+  throw neverSignals()
 }
 
 /**

@@ -40,7 +40,12 @@ export function averageFromSilence({ advance, settlesAfter }: SilentRuns, isStea
     ratio = newRatio
     if (isSteady && t > settlesAfter && calm > 20 && ratio < 1 - 1e-11) return sum + (share * ratio) / (1 - ratio)
   }
-  throw new StatisticsError('no-convergence', 'tests', 'This chart with these tests practically never signals under this change.')
+  throw neverSignals()
+}
+
+/** The refusal to give a run length that nobody will live to see. */
+export function neverSignals(): StatisticsError {
+  return new StatisticsError('no-convergence', 'tests', 'This chart with these tests practically never signals under this change.')
 }
 
 /**

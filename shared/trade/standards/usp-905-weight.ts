@@ -1,4 +1,4 @@
-import { requirePositive, requireValues, StatisticsError } from '#shared/statistics/errors.ts'
+import { requireFinite, requirePositive, requireValues, StatisticsError } from '#shared/statistics/errors.ts'
 import { momentsOf } from '#shared/statistics/summary.ts'
 import type { WeighingBasis } from '#shared/vocabulary.ts'
 import { judgeBasis, shown, type AcceptanceStandard, type Explained } from './standard.ts'
@@ -61,6 +61,7 @@ export function judgeEligibility(claimMg: number, meanFillMg: number): Eligibili
   requirePositive('claimMg', claimMg)
   requirePositive('meanFillMg', meanFillMg)
   const sharePercent = (100 * claimMg) / meanFillMg
+  requireFinite('claimMg', sharePercent)
   const { claimMg: leastMg, sharePercent: leastPercent } = WEIGHT_VARIATION_FROM
   const isEligible = claimMg >= leastMg && sharePercent >= leastPercent * (1 - 1e-10)
   const found = `${shown(claimMg)} mg of active are ${shown(sharePercent, 1)} % of the mean fill of ${shown(meanFillMg, 1)} mg`

@@ -202,6 +202,11 @@ describe('CUSUM', () => {
     expect(Math.abs(exact.averageRunLength - simulated.averageRunLength)).toBeLessThan(4 * simulated.standardError)
   })
 
+  test('a shift far out is seen at once, though the other side never signals', () => {
+    expect(averageRunLength({ chart: 'cusum', n: 1000, shiftSigma: 100 }).averageRunLength).toBe(1)
+    expect(averageRunLength({ chart: 'cusum', n: 1, shiftSigma: -30 }).averageRunLength).toBe(1)
+  })
+
   test('a head start too large for the exact rule, and a drift, are simulated', () => {
     expect(averageRunLength({ chart: 'cusum', n: 1, shiftSigma: 1, cusum: { k: 0.1, h: 5, headStart: 4 } }).method).toBe('simulated')
     expect(averageRunLength({ chart: 'cusum', n: 5, shiftSigma: 0, driftSigma: 0.1 }).method).toBe('simulated')
@@ -242,6 +247,8 @@ test.each([
   [{ ...plain, chart: 'cusum' as const, cusum: { k: 0.5, h: 5, headStart: 5 } }, 'out-of-range', 'cusum.headStart'],
   [{ ...plain, chart: 'cusum' as const, cusum: { k: 0, h: 5, headStart: 0 } }, 'not-positive', 'cusum.k'],
   [{ ...plain, tests: [7], shiftSigma: 9 }, 'no-convergence', 'tests'],
+  [{ ...plain, chart: 'ewma' as const, shiftSigma: 0, ewma: { lambda: 0.01, width: 10 } }, 'no-convergence', 'tests'],
+  [{ ...plain, chart: 'cusum' as const, shiftSigma: 0, cusum: { k: 1, h: 40, headStart: 0 } }, 'no-convergence', 'tests'],
   [{ ...plain, seed: -1 }, 'out-of-range', 'seed'],
 ])('refuses %j: %s', (request, code, argument) => {
   expect(() => averageRunLength({ ...request, tests: 'tests' in request ? request.tests : [1, 2] })).toThrow(

@@ -122,6 +122,25 @@ describe('the tuning model', () => {
     }
   })
 
+  test('gives finite figures or a refusal for any finite trials', () => {
+    const any = fc.double({ noNaN: true, noDefaultInfinity: true })
+    const positive = fc.double({ min: Number.MIN_VALUE, noNaN: true, noDefaultInfinity: true })
+    const row = fc.record({ settings: fc.record({ [LEVER]: any }), meanMg: positive, sdMg: positive, n: fc.integer({ min: 2, max: 1000 }) })
+    fc.assert(
+      fc.property(fc.array(row, { minLength: 1, maxLength: 5 }), positive, (history, target) => {
+        try {
+          const { slopes, predict } = fitTuning(history, prior, target)
+          const { meanMg, levelSd, interval } = predict({}, { n: 20, sdMg: 8 })
+          const { mgPerUnit, sd, interval: credible } = slopes[LEVER]!
+          for (const figure of [meanMg, levelSd, ...interval, mgPerUnit, sd, ...credible]) expect(figure).toSatisfy(Number.isFinite)
+        } catch (error) {
+          expect(error).toMatchObject({ name: 'StatisticsError' })
+        }
+      }),
+      { numRuns: 300 },
+    )
+  })
+
   test.each([
     [[], prior, 400, 'too-few-values'],
     [[trial(20, 0)], prior, 400, 'not-positive'],
