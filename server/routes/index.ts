@@ -13,6 +13,7 @@ import { healthEndpoints } from './health.ts'
 import { machineEventEndpoints } from './machine-events.ts'
 import { machineEndpoints } from './machines.ts'
 import { productEndpoints } from './products.ts'
+import { releaseEndpoints } from './release.ts'
 import { sampleEndpoints } from './samples.ts'
 import { shellLotEndpoints } from './shell-lots.ts'
 import { signalEndpoints } from './signals.ts'
@@ -43,6 +44,7 @@ export function allEndpoints(config: Config): Endpoint[] {
     ...signalEndpoints,
     ...weighingFileEndpoints,
     ...watchEndpoints,
+    ...releaseEndpoints(config),
     ...calculationEndpoints,
   ]
   return [...endpoints, ...apiDescriptionEndpoints(endpoints, packageJson.version)]
