@@ -8,6 +8,7 @@ import { migrate } from './database/migrate.ts'
 import { startJobs } from './jobs/index.ts'
 import { loadDemoIfEmpty } from './services/demo/load-demo-if-empty.ts'
 import { passPhrasePool } from './workers/pass-phrase-pool.ts'
+import { simulationPool } from './workers/simulation-pool.ts'
 
 const REQUEST_TIMEOUT_MS = 120_000
 const HEADERS_TIMEOUT_MS = 20_000
@@ -59,6 +60,7 @@ export async function startServer(config: Config): Promise<RunningServer> {
       await jobs.stop()
       await drain(server)
       await passPhrasePool().close()
+      await simulationPool().close()
       await sequelize.close()
     },
   }

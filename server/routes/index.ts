@@ -13,7 +13,9 @@ import { healthEndpoints } from './health.ts'
 import { machineEventEndpoints } from './machine-events.ts'
 import { machineEndpoints } from './machines.ts'
 import { productEndpoints } from './products.ts'
+import { mailEndpoints } from './mail.ts'
 import { releaseEndpoints } from './release.ts'
+import { reviewEndpoints } from './reviews.ts'
 import { sampleEndpoints } from './samples.ts'
 import { shellLotEndpoints } from './shell-lots.ts'
 import { signalEndpoints } from './signals.ts'
@@ -45,7 +47,9 @@ export function allEndpoints(config: Config): Endpoint[] {
     ...weighingFileEndpoints,
     ...watchEndpoints,
     ...releaseEndpoints(config),
+    ...reviewEndpoints,
+    ...mailEndpoints(config),
     ...calculationEndpoints,
   ]
-  return [...endpoints, ...apiDescriptionEndpoints(endpoints, packageJson.version)]
+  return [...endpoints, ...apiDescriptionEndpoints(endpoints, config, packageJson.version)]
 }

@@ -65,7 +65,8 @@ export function findChangePoint(values: ArrayLike<number>): ChangePoint {
   const deviations = Float64Array.from(values, (value) => value - mean)
   const gains = new Float64Array(n)
   const { best, index } = explained(deviations, gains)
-  const rest = Math.max(sumOfSquares - best, Number.MIN_VALUE)
+  // A split that leaves nothing over would divide by zero; a millionth of a millionth of the whole stands for nothing.
+  const rest = Math.max(sumOfSquares - best, sumOfSquares * 1e-12)
   const all = Array.from(values)
   return {
     index,
@@ -99,7 +100,7 @@ function permutationProbability(deviations: Float64Array, best: number): number 
 
 function likelyPlaces(gains: Float64Array, sumOfSquares: number, best: number, index: number): [number, number] {
   const n = gains.length
-  const logLikelihood = (gain: number): number => (-n / 2) * Math.log(Math.max(sumOfSquares - gain, Number.MIN_VALUE))
+  const logLikelihood = (gain: number): number => (-n / 2) * Math.log(Math.max(sumOfSquares - gain, sumOfSquares * 1e-12))
   const floor = logLikelihood(best) - LIKELIHOOD_DROP
   let from = index
   let to = index
