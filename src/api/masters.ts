@@ -16,45 +16,47 @@ const one =
   <T>(path: string) =>
   (id: string, signal?: AbortSignal) =>
     api.get<T>(`${path}/${id}`, signal ? { signal } : {})
+type Create<R, A> = (request: R, idempotencyKey: string) => Promise<A>
+type Update<R, A> = (id: string, request: R) => Promise<A>
 const create =
-  <R, A>(path: string) =>
-  (request: R, idempotencyKey: string) =>
+  <A>(path: string) =>
+  (request: object, idempotencyKey: string) =>
     api.post<A>(path, request, { idempotencyKey })
 const update =
-  <R, A>(path: string) =>
-  (id: string, request: R) =>
+  <A>(path: string) =>
+  (id: string, request: object) =>
     api.put<A>(`${path}/${id}`, request)
 
 export const fetchSites = (signal?: AbortSignal) => api.get<SiteAnswer[]>('/sites', signal ? { signal } : {})
-export const createSite = create<CreateSite, SiteAnswer>('/sites')
-export const updateSite = update<UpdateSite, SiteAnswer>('/sites')
+export const createSite: Create<CreateSite, SiteAnswer> = create<SiteAnswer>('/sites')
+export const updateSite: Update<UpdateSite, SiteAnswer> = update<SiteAnswer>('/sites')
 
 export const fetchMachines = list<MachineAnswer>('/machines')
-export const createMachine = create<CreateMachine, MachineAnswer>('/machines')
-export const updateMachine = update<UpdateMachine, MachineAnswer>('/machines')
+export const createMachine: Create<CreateMachine, MachineAnswer> = create<MachineAnswer>('/machines')
+export const updateMachine: Update<UpdateMachine, MachineAnswer> = update<MachineAnswer>('/machines')
 
 export const fetchToolingSets = list<ToolingSetAnswer>('/tooling-sets')
-export const createToolingSet = create<CreateToolingSet, ToolingSetAnswer>('/tooling-sets')
-export const updateToolingSet = update<UpdateToolingSet, ToolingSetAnswer>('/tooling-sets')
+export const createToolingSet: Create<CreateToolingSet, ToolingSetAnswer> = create<ToolingSetAnswer>('/tooling-sets')
+export const updateToolingSet: Update<UpdateToolingSet, ToolingSetAnswer> = update<ToolingSetAnswer>('/tooling-sets')
 export const inspectPart = (setId: string, partId: string, request: InspectPart, idempotencyKey: string) =>
   api.post<ToolingSetAnswer>(`/tooling-sets/${setId}/parts/${partId}/inspections`, request, { idempotencyKey })
 
 export const fetchShellLots = list<ShellLotAnswer>('/shell-lots')
 export const fetchShellLot = one<ShellLotDetail>('/shell-lots')
-export const createShellLot = create<CreateShellLot, ShellLotAnswer>('/shell-lots')
-export const updateShellLot = update<UpdateShellLot, ShellLotAnswer>('/shell-lots')
+export const createShellLot: Create<CreateShellLot, ShellLotAnswer> = create<ShellLotAnswer>('/shell-lots')
+export const updateShellLot: Update<UpdateShellLot, ShellLotAnswer> = update<ShellLotAnswer>('/shell-lots')
 export const recordTare = (id: string, request: RecordTare, idempotencyKey: string) =>
   api.post<ShellLotDetail>(`/shell-lots/${id}/tares`, request, { idempotencyKey })
 export const uploadTareFile = (id: string, form: FormData, idempotencyKey: string) =>
   api.upload<ShellLotDetail>(`/shell-lots/${id}/tare-files`, form, { idempotencyKey })
 
 export const fetchProducts = list<ProductAnswer>('/products')
-export const createProduct = create<CreateProduct, ProductAnswer>('/products')
-export const updateProduct = update<UpdateProduct, ProductAnswer>('/products')
+export const createProduct: Create<CreateProduct, ProductAnswer> = create<ProductAnswer>('/products')
+export const updateProduct: Update<UpdateProduct, ProductAnswer> = update<ProductAnswer>('/products')
 
 export const fetchControlPlans = list<ControlPlanAnswer>('/control-plans')
 export const fetchControlPlan = one<ControlPlanAnswer>('/control-plans')
-export const proposeControlPlan = create<ProposeControlPlan, ControlPlanAnswer>('/control-plans')
+export const proposeControlPlan: Create<ProposeControlPlan, ControlPlanAnswer> = create<ControlPlanAnswer>('/control-plans')
 export const approveControlPlan = (id: string, request: ApproveControlPlan, idempotencyKey: string) =>
   api.post<ControlPlanAnswer>(`/control-plans/${id}/approval`, request, { idempotencyKey })
 export const withdrawControlPlan = (id: string, request: WithdrawControlPlan, idempotencyKey: string) =>
@@ -62,7 +64,7 @@ export const withdrawControlPlan = (id: string, request: WithdrawControlPlan, id
 
 export const fetchBalances = list<BalanceAnswer>('/balances')
 export const fetchBalance = one<BalanceDetail>('/balances')
-export const createBalance = create<CreateBalance, BalanceAnswer>('/balances')
-export const updateBalance = update<UpdateBalance, BalanceAnswer>('/balances')
+export const createBalance: Create<CreateBalance, BalanceAnswer> = create<BalanceAnswer>('/balances')
+export const updateBalance: Update<UpdateBalance, BalanceAnswer> = update<BalanceAnswer>('/balances')
 export const recordBalanceCheck = (id: string, request: RecordBalanceCheck, idempotencyKey: string) =>
   api.post<BalanceDetail>(`/balances/${id}/checks`, request, { idempotencyKey })
