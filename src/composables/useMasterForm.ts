@@ -43,7 +43,15 @@ export function useMasterForm<D extends object, R, A>(options: {
   const { isRunning, problem, run } = useAction((key, request: R) => options.save(request, key))
   // Reading every field of the reactive draft, so that the messages follow the typing.
   const parsed = computed(() => options.schema.safeParse(JSON.parse(JSON.stringify(draft))))
-  const typed = computed(() => new Map(parsed.value.error?.issues.map(({ path, message }) => [`/${path.map(String).join('/')}`, message])))
+  const typed = computed(() => {
+    const messages = new Map<string, string>()
+    for (const { path, message } of parsed.value.error?.issues ?? []) {
+      const pointer = `/${path.map(String).join('/')}`
+      // The first message is the plainest: an empty code is missing before it is misspelt.
+      if (!messages.has(pointer)) messages.set(pointer, message)
+    }
+    return messages
+  })
 
   async function submit(): Promise<boolean> {
     wasTried.value = true

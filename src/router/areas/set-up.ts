@@ -52,12 +52,18 @@ const MASTERS: readonly Master[] = [
 
 /** Each master has its list, a page for a new one and a page for each. */
 const masterRoutes = MASTERS.flatMap(({ path, title, list, one }): RouteRecordRaw[] => [
-  { path: `/set-up/${path}`, component: list, meta: { title } },
-  { path: `/set-up/${path}/new`, component: one, meta: { title } },
-  { path: `/set-up/${path}/:id`, component: one, meta: { title } },
+  { path, component: list, meta: { title } },
+  { path: `${path}/new`, component: one, meta: { title } },
+  { path: `${path}/:id`, component: one, meta: { title } },
 ])
 
+/** Nested, so that the word in the navigation stays marked on every page of the area. */
 export const setUpRoutes: RouteRecordRaw[] = [
-  { path: '/set-up', name: 'set-up', component: () => import('@/views/set-up/SetUpView.vue'), meta: { title: 'Set up' } },
-  ...masterRoutes,
+  {
+    path: '/set-up',
+    children: [
+      { path: '', name: 'set-up', component: () => import('@/views/set-up/SetUpView.vue'), meta: { title: 'Set up' } },
+      ...masterRoutes,
+    ],
+  },
 ]
