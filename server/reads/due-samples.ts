@@ -64,6 +64,8 @@ function next(row: Row): { kind: SampleKind; n: number; dueAt: Date; because: st
   const since = lastSampleAt ?? startUpApprovedAt
   const trigger = eventKind === null ? undefined : TRIGGERS[eventKind]
   if (trigger && eventAt && eventAt > since) return { ...trigger, n: sampleSize, dueAt: eventAt }
+  if (row.lastVerdict === 'action')
+    return { kind: 'resample', n: 2 * sampleSize, dueAt: since, because: 'the last sample was beyond action: two good ones are needed' }
   if (row.lastVerdict === 'alert')
     return { kind: 'resample', n: 2 * sampleSize, dueAt: since, because: 'the last sample was at alert: weigh double at once' }
   return {

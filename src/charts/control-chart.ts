@@ -157,7 +157,12 @@ export function controlChartOption(input: ControlChartInput): EChartsOption {
     nameLocation: 'end',
     nameGap: 10,
     nameTextStyle: { color: tokens.text, fontSize: 12, fontWeight: 650, align: 'left', padding: [0, 0, 0, -left + 12] },
-    axisLabel: { ...text, formatter: (value: number) => value.toFixed(gridIndex === GRIDS.location ? 0 : 1) },
+    axisLabel: {
+      ...text,
+      showMinLabel: gridIndex !== GRIDS.location,
+      showMaxLabel: false,
+      formatter: (value: number) => value.toFixed(gridIndex === GRIDS.location ? 0 : 1),
+    },
     splitLine: { show: false },
     axisLine: { show: false },
     axisTick: { show: false },

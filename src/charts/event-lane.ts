@@ -17,7 +17,8 @@ export function eventText({ kind, station, setting, valueFrom, valueTo, unit, la
   }
   if (kind === 'speed') return `speed ${valueFrom ?? ''} to ${valueTo ?? ''}`
   const word = EVENT_WORDS[kind].toLowerCase()
-  return label === '' ? word : `${word} ${label}`
+  if (label === '') return word
+  return label.toLowerCase().startsWith(word) || kind === 'blend-container' || kind === 'start' ? label.toLowerCase() : `${word} ${label}`
 }
 
 /** The events of a run as diamonds on their own lane of the time axis. */

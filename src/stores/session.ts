@@ -6,6 +6,8 @@ import { signIn as requestSignIn, signOut as requestSignOut } from '@/api/auth.t
 import { refreshSession, setAccessToken, whenSignedOut } from '@/api/client.ts'
 
 const SITE_KEY = 'scruple.site'
+/** Whether a refresh cookie may be there: without it the first visit asks nothing. It is no secret and proves nothing. */
+const KNOWN_KEY = 'scruple.signed-in'
 
 /** Who is signed in, at which of their sites they are working, and what they may do there. */
 export const useSessionStore = defineStore('session', () => {
@@ -21,12 +23,14 @@ export const useSessionStore = defineStore('session', () => {
     user.value = signedIn?.user
     setAccessToken(signedIn?.accessToken)
     hasAsked.value = true
+    if (signedIn) localStorage.setItem(KNOWN_KEY, 'yes')
+    else localStorage.removeItem(KNOWN_KEY)
   }
 
   /** Asks the cookie once whether a session is still alive. */
   async function restore(): Promise<void> {
     if (hasAsked.value) return
-    accept(await refreshSession())
+    accept(localStorage.getItem(KNOWN_KEY) === null ? undefined : await refreshSession())
   }
 
   async function signIn(request: SignIn): Promise<void> {
