@@ -1,20 +1,30 @@
 import { randomBytes } from 'node:crypto'
-import { existsSync, readFileSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { z } from 'zod'
+import { readJson, writeSecretJson } from './json-file.ts'
 
 const Secrets = z.object({ accessTokenKey: z.string() })
 
-/** The key that signs access tokens on this machine: made once, readable by its owner alone. */
+/** The key that signs access tokens on this machine: by chance, made once, readable by its owner alone. */
 function accessTokenKey(folder: string): string {
   const file = join(folder, 'secrets.json')
-  if (existsSync(file)) return Secrets.parse(JSON.parse(readFileSync(file, 'utf8'))).accessTokenKey
+  const known = readJson(file, Secrets)
+  if (known) return known.accessTokenKey
   const secrets = { accessTokenKey: randomBytes(32).toString('hex') }
-  writeFileSync(file, JSON.stringify(secrets), { mode: 0o600 })
+  writeSecretJson(file, secrets)
   return secrets.accessTokenKey
 }
 
-/** What a start on one's own machine adds to the environment: the demo, the mail catcher, a key of its own. */
-export function localEnvironment(folder: string): Record<string, string> {
-  return { DEMO: 'true', MAIL_CATCHER: 'true', ACCESS_TOKEN_KEYS: accessTokenKey(folder), DATA_DIRECTORY: folder }
+/**
+ * What Scruple adds to the environment when it brings its own database: the demo, a key of its own, and mail that is
+ * caught unless the environment says where to send it. What a person has set goes before.
+ */
+export function localEnvironment(folder: string): Record<string, string | undefined> {
+  return {
+    DEMO: 'true',
+    MAIL_CATCHER: process.env['SMTP_HOST'] === undefined ? 'true' : 'false',
+    ACCESS_TOKEN_KEYS: accessTokenKey(folder),
+    ...process.env,
+    DATA_DIRECTORY: folder,
+  }
 }

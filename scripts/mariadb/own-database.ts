@@ -1,206 +1,145 @@
-import { spawn, spawnSync, type ChildProcess } from 'node:child_process'
-import { randomBytes } from 'node:crypto'
-import { existsSync, mkdirSync, mkdtempSync, openSync, readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs'
+import { spawnSync, type ChildProcess } from 'node:child_process'
+import { existsSync, mkdirSync, mkdtempSync, renameSync, rmSync, writeFileSync } from 'node:fs'
 import { tmpdir, userInfo } from 'node:os'
 import { join, resolve } from 'node:path'
-import { createConnection } from 'mariadb'
-import { z } from 'zod'
+import { setTimeout as wait } from 'node:timers/promises'
+import { isRoot } from '../debian-packages.ts'
 import { freePort } from '../free-port.ts'
 import { SetUpError } from '../set-up-error.ts'
-import { isRoot, requireMariadb } from './installation.ts'
+import { accountsIn, databaseEnvironment, initialStatements } from './accounts.ts'
+import { launchServer, serverPid, stopServer, type ServerSettings } from './guarded-server.ts'
+import { requireMariadb } from './installation.ts'
 
 const START_TRIES = 3
-const READY_WITHIN_MS = 60_000
-const STOP_WITHIN_MS = 20_000
-
-const Accounts = z.object({ runPassword: z.string(), migratePassword: z.string() })
-type Accounts = z.output<typeof Accounts>
+const RESTART_TRIES = 5
+const STOP_WITHIN_MS = 30_000
+/** A socket path of 108 characters or more aborts the start; this leaves room for the file's own name. */
+const LONGEST_RUN_FOLDER = 80
 
 export interface OwnDatabaseOptions {
   /** The folder that holds the data, the accounts and the log. */
   folder: string
   /** 1: a commit is on disk when it is answered. 2: only for tests. */
   flushAtCommit: 1 | 2
-  /** Further options of the server. */
+  /** Where the socket lies; it is removed with the server. A new folder below the system's temporary one, unless given. */
+  runFolder?: string
+  /** Further options of the server; they win over ours. */
   extra?: readonly string[]
 }
 
 export interface OwnDatabase {
   /** What `server/config.ts` reads. */
   env: Record<string, string>
-  pid: number
-  stop(): Promise<void>
+  /** The process of the server at this moment; another one after a restart. */
+  pid: () => number | undefined
+  stop: () => Promise<void>
 }
-
-function accountsIn(folder: string): Accounts {
-  const file = join(folder, 'database.json')
-  if (existsSync(file)) return Accounts.parse(JSON.parse(readFileSync(file, 'utf8')))
-  const accounts = { runPassword: randomBytes(24).toString('hex'), migratePassword: randomBytes(24).toString('hex') }
-  writeFileSync(file, JSON.stringify(accounts), { mode: 0o600 })
-  return accounts
-}
-
-/** One statement a line; read by the server at each start, so that no client program is needed. */
-function initialStatements({ runPassword, migratePassword }: Accounts): string {
-  return [
-    `CREATE DATABASE IF NOT EXISTS scruple CHARACTER SET utf8mb4 COLLATE utf8mb4_unicode_ci;`,
-    `CREATE USER IF NOT EXISTS 'scruple_migrate'@'127.0.0.1' IDENTIFIED BY '${migratePassword}';`,
-    `GRANT ALL PRIVILEGES ON scruple.* TO 'scruple_migrate'@'127.0.0.1' WITH GRANT OPTION;`,
-    `CREATE USER IF NOT EXISTS 'scruple_run'@'127.0.0.1' IDENTIFIED BY '${runPassword}';`,
-    '',
-  ].join('\n')
-}
-
-const asRoot = (): string[] => (isRoot() ? ['--user=root'] : [])
 
 /** The data folder is made beside its place and renamed, so that a killed first start leaves no half database. */
 function createData(folder: string, installer: string): void {
   if (existsSync(join(folder, 'db'))) return
   rmSync(join(folder, 'db.new'), { recursive: true, force: true })
+  // With any other method the installer makes accounts that anybody on the machine can use without a password.
   const account = ['--auth-root-authentication-method=socket', `--auth-root-socket-user=${userInfo().username}`, '--skip-test-db']
-  const { status, stderr } = spawnSync(installer, ['--no-defaults', ...asRoot(), '--datadir=./db.new', ...account], {
+  const asRoot = isRoot() ? ['--user=root'] : []
+  const { status, stdout, stderr } = spawnSync(installer, ['--no-defaults', ...asRoot, '--datadir=./db.new', ...account], {
     cwd: folder,
     encoding: 'utf8',
   })
-  if (status !== 0)
-    throw new SetUpError(`MariaDB could not make its data folder in ${folder}: ${stderr.trim().split('\n').pop() ?? 'no reason given'}`)
+  if (status !== 0) {
+    writeFileSync(join(folder, 'mariadb-install-db.log'), stdout + stderr)
+    throw new SetUpError(`MariaDB could not make its data folder; its reasons are in ${join(folder, 'mariadb-install-db.log')}.`)
+  }
   renameSync(join(folder, 'db.new'), join(folder, 'db'))
 }
 
-function isAlive(pid: number): boolean {
-  try {
-    process.kill(pid, 0)
-    return true
-  } catch {
-    // No such process, or one of somebody else: in neither case ours.
-    return false
-  }
+function newRunFolder(): string {
+  const parent = tmpdir().length > LONGEST_RUN_FOLDER ? '/tmp' : tmpdir()
+  return mkdtempSync(join(parent, 'scruple-'))
 }
 
-/** A server of ours that outlived a killed start is stopped; it is known by its pid file and by the data folder on its command line. */
-async function stopLeftOver(folder: string): Promise<void> {
-  const file = join(folder, 'mariadbd.pid')
-  if (!existsSync(file)) return
-  const pid = Number(readFileSync(file, 'utf8').trim())
-  const commandLine = existsSync(`/proc/${pid}/cmdline`) ? readFileSync(`/proc/${pid}/cmdline`, 'utf8') : ''
-  if (pid > 0 && commandLine.includes(join(folder, 'db'))) await terminate(pid)
-  rmSync(file, { force: true })
-}
-
-async function terminate(pid: number): Promise<void> {
-  if (!isAlive(pid)) return
-  process.kill(pid, 'SIGTERM')
-  const deadline = Date.now() + STOP_WITHIN_MS
-  while (isAlive(pid)) {
-    if (Date.now() > deadline) process.kill(pid, 'SIGKILL')
-    await new Promise((wait) => setTimeout(wait, 25))
-  }
-}
-
-function serverOptions(folder: string, socketFolder: string, port: number, { flushAtCommit, extra = [] }: OwnDatabaseOptions): string[] {
-  return [
-    '--no-defaults',
-    ...asRoot(),
-    `--datadir=${join(folder, 'db')}`,
-    `--socket=${join(socketFolder, 's')}`,
-    `--pid-file=${join(folder, 'mariadbd.pid')}`,
-    `--init-file=${join(socketFolder, 'init.sql')}`,
-    '--bind-address=127.0.0.1',
-    `--port=${port}`,
-    '--skip-name-resolve',
-    '--character-set-server=utf8mb4',
-    '--collation-server=utf8mb4_unicode_ci',
-    '--default-time-zone=+00:00',
-    `--innodb-flush-log-at-trx-commit=${flushAtCommit}`,
-    '--innodb-lock-wait-timeout=5',
-    '--innodb-log-file-size=64M',
-    '--innodb-buffer-pool-size=256M',
-    '--max-allowed-packet=64M',
-    '--local-infile=0',
-    '--max-connections=200',
-    ...extra,
-  ]
-}
-
-async function isReady(port: number, password: string): Promise<boolean> {
-  try {
-    const connection = await createConnection({
-      host: '127.0.0.1',
-      port,
-      user: 'scruple_migrate',
-      password,
-      database: 'scruple',
-      connectTimeout: 1_000,
-    })
-    await connection.query('SELECT 1')
-    await connection.end()
-    return true
-  } catch {
-    // Not up yet; the caller tries again until its time is over and then shows the log.
-    return false
-  }
-}
-
-/** Starts the server in a session of its own, since a signal to the terminal's group must not stop it before the program has. */
-async function launch(
-  server: string,
-  folder: string,
-  socketFolder: string,
-  options: OwnDatabaseOptions,
-  accounts: Accounts,
-): Promise<{ child: ChildProcess; port: number } | undefined> {
-  const port = await freePort()
-  const log = openSync(join(folder, 'mariadbd.log'), 'a')
-  const child = spawn(server, serverOptions(folder, socketFolder, port, options), {
-    cwd: folder,
-    detached: true,
-    stdio: ['ignore', log, log],
-  })
-  const deadline = Date.now() + READY_WITHIN_MS
-  while (child.exitCode === null && Date.now() < deadline) {
-    if (await isReady(port, accounts.migratePassword)) return { child, port }
-    await new Promise((wait) => setTimeout(wait, 25))
-  }
-  return undefined
-}
-
-/** A MariaDB of our own on the loopback interface, with its data under the folder; no other one on the machine is touched. */
+/**
+ * A MariaDB of our own on the loopback interface, with its data under the folder; no other one on the machine is touched.
+ * It is started again, on the same port, when it ends without having been asked to.
+ * @throws {SetUpError} when MariaDB is missing and cannot be installed, or does not start
+ */
 export async function startOwnDatabase(options: OwnDatabaseOptions): Promise<OwnDatabase> {
   const { server, installer } = requireMariadb()
   const folder = resolve(options.folder)
   mkdirSync(folder, { recursive: true })
-  await stopLeftOver(folder)
+  await stopServer(folder)
   createData(folder, installer)
   const accounts = accountsIn(folder)
-  // A socket path of 108 characters or more aborts the start, so it never lies in the project.
-  const socketFolder = mkdtempSync(join(tmpdir(), 'scruple-'))
-  writeFileSync(join(socketFolder, 'init.sql'), initialStatements(accounts), { mode: 0o600 })
-  for (let attempt = 1; attempt <= START_TRIES; attempt++) {
-    const launched = await launch(server, folder, socketFolder, options, accounts)
-    if (!launched) continue
-    const { child, port } = launched
-    const pid = child.pid ?? 0
-    child.unref()
-    return {
-      env: environmentOf(port, accounts),
-      pid,
-      stop: async () => {
-        await terminate(pid)
-        rmSync(socketFolder, { recursive: true, force: true })
-      },
-    }
+  const runFolder = options.runFolder ?? newRunFolder()
+  const prepare = (): void => {
+    mkdirSync(runFolder, { recursive: true })
+    writeFileSync(join(runFolder, 'init.sql'), initialStatements(accounts), { mode: 0o600 })
   }
-  throw new SetUpError(`MariaDB did not start; its reasons are in ${join(folder, 'mariadbd.log')}.`)
+  const flush = `--innodb-flush-log-at-trx-commit=${options.flushAtCommit}`
+  const { migratePassword } = accounts
+  const settings: ServerSettings = {
+    program: server,
+    folder,
+    runFolder,
+    migratePassword,
+    options: [flush, '--innodb-log-file-size=64M', '--innodb-buffer-pool-size=256M', ...(options.extra ?? [])],
+  }
+  const { port, stop } = await keepUp(settings, prepare)
+  return { env: databaseEnvironment(port, accounts), pid: () => serverPid(folder), stop }
 }
 
-function environmentOf(port: number, { runPassword, migratePassword }: Accounts): Record<string, string> {
-  return {
-    DATABASE_HOST: '127.0.0.1',
-    DATABASE_PORT: String(port),
-    DATABASE_NAME: 'scruple',
-    DATABASE_RUN_USER: 'scruple_run',
-    DATABASE_RUN_PASSWORD: runPassword,
-    DATABASE_MIGRATE_USER: 'scruple_migrate',
-    DATABASE_MIGRATE_PASSWORD: migratePassword,
+async function launchAnywhere(settings: ServerSettings): Promise<{ guard: ChildProcess; port: number }> {
+  for (let attempt = 1; attempt <= START_TRIES; attempt++) {
+    // Somebody else may take the port between our look and the server's.
+    const port = await freePort()
+    const guard = await launchServer(settings, port)
+    if (guard) return { guard, port }
   }
+  throw new SetUpError(`MariaDB did not start; its reasons are in ${join(settings.folder, 'mariadbd.log')}.`)
+}
+
+async function launchAgain(settings: ServerSettings, port: number): Promise<ChildProcess> {
+  for (let attempt = 1; attempt <= RESTART_TRIES; attempt++) {
+    await stopServer(settings.folder)
+    const guard = await launchServer(settings, port)
+    if (guard) return guard
+  }
+  throw new Error(`MariaDB ended and could not be started again; its reasons are in ${join(settings.folder, 'mariadbd.log')}.`)
+}
+
+async function keepUp(settings: ServerSettings, prepare: () => void): Promise<{ port: number; stop: () => Promise<void> }> {
+  prepare()
+  const first = await launchAnywhere(settings)
+  const { port } = first
+  let isStopping = false
+  let running = Promise.resolve(first.guard)
+  const watch = (guard: ChildProcess): ChildProcess => {
+    // The server must not keep this process alive; the guard ends with it.
+    guard.unref()
+    guard.once('exit', () => {
+      if (isStopping) return
+      prepare()
+      running = launchAgain(settings, port).then(watch)
+    })
+    return guard
+  }
+  watch(first.guard)
+  return {
+    port,
+    stop: async () => {
+      isStopping = true
+      await letGo(await running, settings)
+    },
+  }
+}
+
+async function letGo(guard: ChildProcess, { folder, runFolder }: ServerSettings): Promise<void> {
+  const gone = new Promise((resolve) => guard.once('exit', resolve))
+  if (guard.exitCode === null && guard.signalCode === null) {
+    guard.ref()
+    guard.stdin?.end()
+    await Promise.race([gone, wait(STOP_WITHIN_MS, undefined, { ref: false })])
+  }
+  await stopServer(folder)
+  rmSync(runFolder, { recursive: true, force: true })
 }
