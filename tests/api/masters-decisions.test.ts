@@ -215,4 +215,20 @@ describe('balances', () => {
     expect(failed.state).toBe('out-of-use')
     expect(await Balance.count({ where: { id, state: 'out-of-use' } })).toBe(1)
   })
+
+  test('a passed repeatability does not heal a failed accuracy check', async () => {
+    const run = await buildRun()
+    const own = await api.as(run.site, 'engineer')
+    const path = `/api/balances/${run.balance.id}`
+    await own.post(`${path}/checks`, { ...check, readingMg: 501 })
+    const readingsMg = Array.from({ length: 10 }, (_, place) => 500 + (place % 2) / 10)
+    const after = (await own.post(`${path}/checks`, { ...check, kind: 'repeatability', readingsMg, toleranceMg: 0.1 })).body
+    expect(after).toMatchObject({ state: 'out-of-use', lastCheck: { kind: 'repeatability', hasPassed: true } })
+    const { code, version } = after
+    const back = { ...fields, code, version, state: 'in-use', reason: 'repeats well' }
+    expect((await own.put(path, back)).body).toMatchObject({
+      type: '/problems/no-passed-check',
+      title: expect.stringMatching(/accuracy failed/),
+    })
+  })
 })

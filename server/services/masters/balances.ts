@@ -12,6 +12,7 @@ import { requireVersion } from '../require-version.ts'
 import { userNames } from '../user-names.ts'
 import { findMaster, readableSites, requireFreeCode } from './master-record.ts'
 import { presentBalance, presentBalances, presentCheck } from './present-balance.ts'
+import { CHECK_GROUPS, failedGroup, lastCheckOf } from './standing-checks.ts'
 
 const CHECKS_SHOWN = 200
 
@@ -24,6 +25,7 @@ export async function listBalances(actor: Actor, { siteId }: SiteQuery): Promise
 /** A balance in full: its checks, what it may weigh, and the samples in doubt after a failed check (requirement C12). */
 export async function balanceDetail(balance: Balance): Promise<BalanceDetail> {
   const answer = await presentBalance(balance, new Date())
+  const failed = await failedGroup(balance.id)
   const checks = await BalanceCheck.findAll({
     where: { balanceId: balance.id },
     order: [
@@ -42,7 +44,7 @@ export async function balanceDetail(balance: Balance): Promise<BalanceDetail> {
       isBelowMinimum: targetFillMg < answer.minimumWeightMg,
       isNetBelowMinimum: targetFillMg < answer.minimumNetMg,
     })),
-    samplesInDoubt: answer.lastCheck?.hasPassed === false ? await samplesInDoubt(balance.id) : [],
+    samplesInDoubt: failed === undefined ? [] : await samplesInDoubt(balance.id, CHECK_GROUPS[failed]),
   }
 }
 
@@ -65,14 +67,15 @@ export async function createBalance(actor: Actor, fields: CreateBalance): Promis
 }
 
 /** Back into use only after an external check has passed and while the calibration lasts (requirements C11, C14). */
-function requireFitForUse(answer: BalanceAnswer): void {
+async function requireFitForUse(answer: BalanceAnswer): Promise<void> {
   if (answer.isCalibrationOverdue) {
     throw new ConflictError('calibration-overdue', `The calibration of balance ${answer.code} ran out on ${answer.calibrationDueOn}.`)
   }
-  if (answer.lastCheck?.hasPassed !== true) {
-    const why = answer.lastCheck ? 'its last check failed' : 'it was never checked'
-    throw new ConflictError('no-passed-check', `Balance ${answer.code} cannot be used: ${why}. Record a passed check first.`)
-  }
+  const failed = await failedGroup(answer.id)
+  const accuracy = await lastCheckOf(answer.id, 'accuracy')
+  if (accuracy && failed === undefined) return
+  const why = failed === undefined ? 'it was never checked against a weight' : `its last check of ${failed} failed`
+  throw new ConflictError('no-passed-check', `Balance ${answer.code} cannot be used: ${why}. Record a passed one first.`)
 }
 
 /** Changes a balance, takes it out of use or brings it back. */
@@ -86,7 +89,7 @@ export async function updateBalance(actor: Actor, id: string, { version, reason,
     const old = await presentBalance(balance, now)
     await balance.update({ ...fields, version: version + 1 })
     const answer = await presentBalance(balance, now)
-    if (old.state === 'out-of-use' && answer.state === 'in-use') requireFitForUse(answer)
+    if (old.state === 'out-of-use' && answer.state === 'in-use') await requireFitForUse(answer)
     const record = { kind: 'balance', id }
     await appendAudit({ actor, chain: chainOf.balances(siteId), action: 'balance:update', record, old, new: answer, reason })
     return answer

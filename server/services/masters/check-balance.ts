@@ -9,6 +9,7 @@ import { appendAudit, chainOf } from '../audit.ts'
 import { statedTime } from '../stated-time.ts'
 import { balanceDetail } from './balances.ts'
 import { findMaster } from './master-record.ts'
+import { failedGroup, lastCheckOf } from './standing-checks.ts'
 
 /** A rounding error of a thousandth of a step is no finer reading. */
 const STEP_TOLERANCE = 1e-3
@@ -56,12 +57,13 @@ export async function recordBalanceCheck(actor: Actor, balanceId: string, check:
     const balance = await findMaster(Balance, actor, { permission: 'balance:check', kind: 'balance', id: balanceId, isLocked: true })
     const { readingMg, hasPassed, repeatabilitySdMg } = judge(balance, check)
     const checkedAt = statedTime('/checkedAt', check.checkedAt, new Date())
-    const isFirst = (await BalanceCheck.count({ where: { balanceId } })) === 0
     const { kind, referenceWeight, nominalMg, toleranceMg, remarks } = check
+    const isFirst = kind !== 'repeatability' && (await lastCheckOf(balanceId, 'accuracy')) === null
     const figures = { kind, referenceWeight, nominalMg, readingMg: Number(readingMg.toFixed(4)), toleranceMg, hasPassed, remarks }
     const row = await BalanceCheck.create({ balanceId, checkedAt, checkedById: actor.userId, ...figures })
     const old = { state: balance.state, repeatabilitySdMg: balance.repeatabilitySdMg }
-    const state = hasPassed ? (isFirst ? 'in-use' : balance.state) : 'out-of-use'
+    const isNowFit = hasPassed && isFirst && (await failedGroup(balanceId)) === undefined
+    const state = isNowFit ? 'in-use' : hasPassed ? balance.state : 'out-of-use'
     await balance.update({ state, ...(repeatabilitySdMg === undefined ? {} : { repeatabilitySdMg }), version: balance.version + 1 })
     await appendAudit({
       actor,
